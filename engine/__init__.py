@@ -1,0 +1,1 @@
+"""The physics of the stepped-waveform bridge: SI units throughout, no Qt."""
