@@ -1,0 +1,122 @@
+"""Zeros of f(s) = a + Σ bᵢ ψᵢ(s), ψᵢ(s) = expm1(λᵢ s)/λᵢ, λᵢ ≤ 0, that cannot be missed.
+
+All waveforms of one piece are functions of this class, and so are their derivatives.
+A function is a tuple of coefficients (a, b₁ … b_n) beside the tuple of rates λ.
+"""
+
+from __future__ import annotations
+
+from math import exp, expm1, sqrt
+
+Coefficients = tuple[float, ...]
+Rates = tuple[float, ...]
+
+_MOST_STEPS = 400
+
+
+def psi(rate: float, s: float) -> float:
+    """ψ(s) = (e^{λs} − 1)/λ, which is s where λ = 0."""
+    return expm1(rate * s) / rate if rate else s
+
+
+def value(f: Coefficients, rates: Rates, s: float) -> float:
+    """f(s)."""
+    total = f[0]
+    for b, rate in zip(f[1:], rates, strict=True):
+        if b:
+            total += b * psi(rate, s)
+    return total
+
+
+def derivative(f: Coefficients, rates: Rates) -> Coefficients:
+    """f′ as a function of the same class: e^{λs} = 1 + λψ(s)."""
+    slopes = f[1:]
+    return (sum(slopes), *(b * rate for b, rate in zip(slopes, rates, strict=True)))
+
+
+def slope(f: Coefficients, rates: Rates, s: float) -> float:
+    """f′(s)."""
+    return sum(b * exp(rate * s) for b, rate in zip(f[1:], rates, strict=True) if b)
+
+
+def first_fall(
+    f: Coefficients, rates: Rates, end: float, slack: float, start: float = 0.0
+) -> float | None:
+    """First instant in (start, end) at which f falls through zero, `None` when it does not.
+
+    `slack` is the size below which a value counts as zero: f may start there, and a dip that
+    stays above −slack is no fall. With |f″| ≤ B on the rest of the piece (the exponentials
+    only decay) the step (f′ + √(f′² + 2Bf))/B never passes a zero.
+    """
+    s = start
+    for _ in range(_MOST_STEPS):
+        height = value(f, rates, s) + slack
+        if height <= 0.0:
+            return _polished(f, rates, s, start)
+        step = _safe_step(f, rates, s, height)
+        if step is None or s + step >= end:
+            return None
+        if step <= 4e-16 * s:
+            return _polished(f, rates, s, start)
+        s += step
+    return _polished(f, rates, s, start)
+
+
+def _safe_step(f: Coefficients, rates: Rates, s: float, height: float) -> float | None:
+    """Longest step over which a function of this height and curvature cannot reach zero."""
+    fall = 0.0
+    bend = 0.0
+    for b, rate in zip(f[1:], rates, strict=True):
+        now = b * exp(rate * s)
+        fall += now
+        bend += abs(now * rate)
+    if bend == 0.0:
+        return -height / fall if fall < 0.0 else None
+    reach = sqrt(fall * fall + 2.0 * bend * height)
+    return (fall + reach) / bend if fall >= 0.0 else 2.0 * height / (reach - fall)
+
+
+def _polished(f: Coefficients, rates: Rates, s: float, start: float) -> float:
+    """Newton from the zero of f + slack to that of f itself."""
+    for _ in range(3):
+        rate_of_fall = slope(f, rates, s)
+        if rate_of_fall >= 0.0:
+            return s
+        nearer = s - value(f, rates, s) / rate_of_fall
+        if not start <= nearer <= s:
+            return s
+        s = nearer
+    return s
+
+
+def crossings(f: Coefficients, rates: Rates, end: float, slack: float) -> list[float]:
+    """Every instant in (0, end) at which f changes sign, in order."""
+    found: list[float] = []
+    s = 0.0
+    while len(found) <= 2 * len(f):
+        sign = _sign_after(f, rates, s, end, slack)
+        if sign == 0:
+            return found
+        g = tuple(sign * c for c in f)
+        s_next = first_fall(g, rates, end, slack, s)
+        if s_next is None:
+            return found
+        found.append(s_next)
+        s = s_next
+    return found
+
+
+def _sign_after(f: Coefficients, rates: Rates, s: float, end: float, slack: float) -> int:
+    """Sign that f takes on after s: of its value, else of its lowest derivative there."""
+    here = value(f, rates, s)
+    if abs(here) > slack:
+        return 1 if here > 0.0 else -1
+    g = f
+    scale = end
+    for _ in range(len(f)):
+        g = derivative(g, rates)
+        here = value(g, rates, s) * scale
+        if abs(here) > slack:
+            return 1 if here > 0.0 else -1
+        scale *= end
+    return 0
