@@ -56,6 +56,7 @@ class Losses(Result, frozen=True, kw_only=True):
     on_state_W: float
     switching_W: float
     recovery_W: float
+    leakage_W: float = 0.0
 
 
 class CandidateResult(Result, frozen=True, kw_only=True):
@@ -87,6 +88,7 @@ class Wanted(Result, frozen=True, kw_only=True):
     """True where a smaller rating is the better one (t_q)."""
     next_class: float | None = None
     """The next usual class above, where the trade has classes."""
+    how: str = ""
 
 
 class Warning(Result, frozen=True, kw_only=True):

@@ -8,6 +8,7 @@ Field names are the letter symbols of IEC 60747 with the SI unit as the last par
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from typing import Annotated, Literal
 
 import msgspec
@@ -21,6 +22,18 @@ Seconds = Annotated[float, Meta(gt=0.0, le=10.0)]
 Celsius = Annotated[float, Meta(ge=-100.0, le=1000.0)]
 Exponent = Annotated[float, Meta(ge=0.0, le=5.0)]
 Slope = Annotated[float, Meta(gt=0.0, le=1e15)]
+
+USUAL_CONDITIONS: Mapping[str, float | str] = {
+    "I_TAV_case_C": 85.0,
+    "I_C_case_C": 80.0,
+    "I_FAV_case_C": 85.0,
+    "I_TSM_duration_s": 0.01,
+    "I_FSM_duration_s": 0.01,
+    "tq_reverse_V": 50.0,
+    "E_Tvj_C": 125.0,
+    "Rth_wave": "dc",
+}
+"""Test conditions that are taken, as assumed, where a sheet's have not been entered."""
 
 Basis = Literal["maximum", "typical", "read from curve", "assumed"]
 RthWave = Literal["dc", "sine180", "block120"]
@@ -138,3 +151,16 @@ class Diode(Ratings, frozen=True, kw_only=True, tag_field="kind", tag="diode"):
 
 
 Switch = Thyristor | Igbt
+
+
+def entered(device: Switch | Diode, key: str) -> float:
+    """A rating that is known to have been entered."""
+    value: float | None = getattr(device, key)
+    assert value is not None, f"{key} has not been entered"
+    return value
+
+
+def condition(device: Switch | Diode, key: str) -> float:
+    """A numeric test condition as entered, else the usual one."""
+    own = getattr(device, key)
+    return float(USUAL_CONDITIONS[key] if own is None else own)

@@ -1,0 +1,1 @@
+"""The window and the commands around the engine."""
