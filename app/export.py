@@ -11,7 +11,7 @@ from typing import Any
 import msgspec
 
 from app.safe_write import write_atomically
-from engine.bridge import PHASES, POSITIONS, bridge_at
+from engine.bridge import PHASES, POSITIONS, nominal_bridge
 from engine.checks import Assessment
 from engine.duty import Duty, duty_of
 from engine.selection import Selection
@@ -40,7 +40,7 @@ def write_tables(selection: Selection, assessment: Assessment, folder: Path) -> 
         "duty": _duty_rows(duty),
         "positions": _position_rows(assessment),
         "events": _event_rows(assessment),
-        "waveforms": _waveform_rows(_nominal_waveforms(duty)),
+        "waveforms": _waveform_rows(sampled(solve(nominal_bridge(duty)))),
         "checks": _check_rows(assessment),
         "corners": _corner_rows(assessment),
     }
@@ -55,10 +55,6 @@ def table_bytes(rows: Iterable[Row]) -> bytes:
         ["" if cell is None else cell for cell in row] for row in rows
     )
     return text.getvalue().encode()
-
-
-def _nominal_waveforms(duty: Duty) -> Waveforms:
-    return sampled(solve(bridge_at(duty, duty.voltage_V.nominal, duty.frequency_Hz.nominal, 1.0)))
 
 
 def _duty_rows(duty: Duty) -> Iterable[Row]:

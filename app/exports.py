@@ -14,6 +14,7 @@ from app.picture import Picture
 from app.safe_write import write_atomically
 
 PDF = "PDF (*.pdf)"
+MISTAKE = "This is a mistake in the program; Help → Log holds the details."
 
 
 class Exports(QObject):

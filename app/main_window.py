@@ -274,6 +274,8 @@ class MainWindow(QMainWindow):
 
     def showEvent(self, event: QShowEvent) -> None:
         super().showEvent(event)
+        if not event.spontaneous():
+            focus_into(self.current_page)
         QTimer.singleShot(0, self, self._make_next_page)
 
     def dragEnterEvent(self, event: QDragEnterEvent) -> None:

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from functools import lru_cache
 from pathlib import Path
 from string import Template
 from typing import Literal
@@ -127,7 +128,7 @@ def apply_theme(app: QApplication, choice: ThemeChoice) -> None:
     if app.property("themed") is None:
         app.setProperty("themed", True)
         app.setStyle("Fusion")
-        _load_fonts()
+        load_fonts()
         app.setFont(font(BODY))
         app.styleHints().colorSchemeChanged.connect(lambda: _dress(app))
     _dress(app)
@@ -147,7 +148,9 @@ def _wanted(app: QApplication) -> Theme:
     return DARK if dark else LIGHT
 
 
-def _load_fonts() -> None:
+@lru_cache(maxsize=1)
+def load_fonts() -> None:
+    """Make the shipped fonts known to Qt; an application must exist."""
     for name in ("DejaVuSans.ttf", "DejaVuSans-Bold.ttf"):
         QFontDatabase.addApplicationFont(str(RESOURCES / "fonts" / name))
 

@@ -19,7 +19,8 @@ from __future__ import annotations
 from cmath import exp as cexp
 from dataclasses import dataclass
 from math import exp, expm1, floor, log1p, pi, sqrt
-from typing import Literal
+from operator import itemgetter
+from typing import Literal, NamedTuple
 
 from engine.bridge import POSITIONS, Bridge
 from engine.gating import gate_window_s
@@ -53,8 +54,7 @@ def has_closed_form(bridge: Bridge) -> bool:
     )
 
 
-@dataclass(frozen=True, slots=True)
-class _Part:
+class _Part(NamedTuple):
     """One exponential of a leg's half wave, in its diode or its switch."""
 
     duration_s: float
@@ -248,11 +248,20 @@ def _positions(
     )
 
 
-_Change = tuple[float, int, Literal["switch", "diode"], Kind, float, float, float | None]
-"""Time after T1's nominal gate-on, position that changes, device, kind, current, voltage, di/dt."""
+class _Change(NamedTuple):
+    """One device of one leg begins or ceases to conduct."""
+
+    time_s: float
+    """After T1's nominal gate-on."""
+    position: int
+    device: Literal["switch", "diode"]
+    kind: Kind
+    current_A: float
+    voltage_V: float
+    didt_A_per_s: float | None
 
 
-def _changes(bridge: Bridge, wave: _HalfWave, integrals: _Integrals) -> list[_Change]:
+def _changes(bridge: Bridge, wave: _HalfWave, integrals: _Integrals) -> tuple[_Change, ...]:
     """What happens in T4, D1 and T1 from the gate-off of T4 on."""
     V = bridge.voltage_V
     off = bridge.blanking_s - wave.delay_s
@@ -263,38 +272,33 @@ def _changes(bridge: Bridge, wave: _HalfWave, integrals: _Integrals) -> list[_Ch
     zero = off + wave.freewheel_s
     on = bridge.blanking_s if gap else zero
     open_V = 0.5 * V if gap else 0.0
-    return [
-        (off, 3, "switch", "off forced", wave.gate_off_A, V, None),
-        (off, 0, "diode", "on at current", wave.gate_off_A, V, None),
-        (zero, 0, "diode", "off natural", 0.0, open_V, falls),
-        (on, 0, "switch", "on at zero", 0.0, open_V, rises),
-    ]
+    return (
+        _Change(off, 3, "switch", "off forced", wave.gate_off_A, V, None),
+        _Change(off, 0, "diode", "on at current", wave.gate_off_A, V, None),
+        _Change(zero, 0, "diode", "off natural", 0.0, open_V, falls),
+        _Change(on, 0, "switch", "on at zero", 0.0, open_V, rises),
+    )
 
 
-def _events(
-    bridge: Bridge, wave: _HalfWave, integrals: _Integrals
-) -> tuple[SwitchingEvent, ...]:
+def _events(bridge: Bridge, wave: _HalfWave, integrals: _Integrals) -> tuple[SwitchingEvent, ...]:
     """The changes of one leg, repeated for all six sixths of the period, in order of time."""
     sixth = bridge.period_s / 6.0
-    within = []
-    for time, *change in _changes(bridge, wave, integrals):
-        sixths = floor(time / sixth + _ROUNDING)
-        within.append((max(0.0, time - sixths * sixth), sixths, *change))
-    within.sort(key=lambda change: change[0])
-    events = []
-    for number in range(6):
-        for time, sixths, position, device, kind, current, voltage, didt in within:
-            time_s = number * sixth + time
-            events.append(
-                SwitchingEvent(
-                    angle_deg=360.0 * bridge.frequency_Hz * time_s,
-                    time_s=time_s,
-                    position=POSITIONS[(number - sixths + position) % 6],
-                    device=device,
-                    kind=kind,
-                    current_A=current,
-                    voltage_V=voltage,
-                    didt_A_per_s=didt,
-                )
-            )
-    return tuple(events)
+    within: list[tuple[float, int, _Change]] = []
+    for change in _changes(bridge, wave, integrals):
+        sixths = floor(change.time_s / sixth + _ROUNDING)
+        within.append((max(0.0, change.time_s - sixths * sixth), sixths, change))
+    within.sort(key=itemgetter(0))
+    return tuple(
+        SwitchingEvent(
+            angle_deg=360.0 * bridge.frequency_Hz * (number * sixth + time_s),
+            time_s=number * sixth + time_s,
+            position=POSITIONS[(number - sixths + change.position) % 6],
+            device=change.device,
+            kind=change.kind,
+            current_A=change.current_A,
+            voltage_V=change.voltage_V,
+            didt_A_per_s=change.didt_A_per_s,
+        )
+        for number in range(6)
+        for time_s, sixths, change in within
+    )

@@ -64,6 +64,11 @@ def bridge_at(duty: Duty, voltage_V: float, frequency_Hz: float, load_factor: fl
     )
 
 
+def nominal_bridge(duty: Duty) -> Bridge:
+    """The bridge of a duty at nominal voltage, frequency and load."""
+    return bridge_at(duty, duty.voltage_V.nominal, duty.frequency_Hz.nominal, 1.0)
+
+
 def _scaled(values: Triple, by: float) -> Triple:
     a, b, c = values
     return a * by, b * by, c * by

@@ -1,16 +1,24 @@
-"""What every position and the bridge as a whole must stand over one period."""
+"""What every position and the bridge as a whole must stand over one period.
+
+Everything is read from the first half period: what the upper position of a leg does in one
+half, the lower does in the other, so that both together show the whole period of either.
+"""
 
 from __future__ import annotations
 
 from collections.abc import Callable
 from math import sqrt
+from typing import NamedTuple
 
-from engine.bridge import LEG_OF_POSITION, POSITIONS, UPPER, Bridge
-from engine.conduction import Stretch, stretches_of
+import msgspec
+
+from engine.balanced_star import closed_form_stress, has_closed_form
+from engine.bridge import LOWER_OF_LEG, POSITIONS, UPPER_OF_LEG, Bridge
+from engine.conduction import Stretch, half_period
 from engine.duty import Triple
-from engine.roots import Coefficients
-from engine.steady_state import SteadyState
-from engine.stress import BridgeStress, DiodeStress, PositionStress, SwitchStress
+from engine.integrals import integral, integral_of_square
+from engine.steady_state import SteadyState, solve
+from engine.stress import BridgeStress, DiodeStress, PositionStress, SwitchStress, TurnOff
 from engine.switching_events import events_of
 from engine.turn_off import (
     Window,
@@ -23,42 +31,67 @@ from engine.turn_off import (
     window_of,
 )
 from engine.waveform_measures import (
+    BRANCH_CURRENT,
+    BRANCH_VOLTAGE,
+    LINE_CURRENT,
+    LINE_VOLTAGE,
+    LINK_CURRENT,
     Waveform,
     extremes,
     harmonic,
     mean,
     mean_square,
     peak,
-    rms,
     total_harmonic_distortion,
 )
 
 Stretches = tuple[Stretch, ...]
 
+_NO_VOLTAGE = 1e-9  # of the link voltage
+
+
+def stress_at(bridge: Bridge) -> BridgeStress:
+    """All stresses of a bridge, by the closed form where there is one.
+
+    Raises
+    ------
+    NoSolution
+        As `solve` does.
+    """
+    if has_closed_form(bridge):
+        return closed_form_stress(bridge)
+    return stress_from_pieces(solve(bridge))
+
 
 def stress_of(state: SteadyState) -> BridgeStress:
+    """All stresses of a solved bridge, by the closed form where there is one."""
+    if has_closed_form(state.bridge):
+        return closed_form_stress(state.bridge)
+    return stress_from_pieces(state)
+
+
+def stress_from_pieces(state: SteadyState) -> BridgeStress:
     """All stresses of the six positions and of the bridge, from exact integrals."""
     bridge = state.bridge
-    stretches = stretches_of(state)
-    period_s = bridge.period_s
-    line_rms = _for_each(lambda leg: rms(stretches, _line(leg), period_s))
-    branch_square = _for_each(lambda k: mean_square(stretches, _branch(k), period_s))
-    voltage_rms = _for_each(lambda k: rms(stretches, _line_voltage(k), period_s))
-    fundamental = _for_each(
-        lambda k: abs(harmonic(stretches, _line_voltage(k), period_s, 1)) / sqrt(2.0)
+    half = half_period(state)
+    line_square = _squares(half, LINE_CURRENT)
+    branch_square = _squares(half, BRANCH_CURRENT)
+    line_V = _roots(_squares(half, LINE_VOLTAGE))
+    fundamental_V = _for_each(
+        lambda k: abs(harmonic(half, LINE_VOLTAGE[k], bridge.frequency_Hz, 1)) / sqrt(2.0)
     )
-    link_avg = mean(stretches, _link_current, period_s)
-    link_square = mean_square(stretches, _link_current, period_s)
+    link_avg, link_square = mean(half, LINK_CURRENT), mean_square(half, LINK_CURRENT)
+    star = bridge.connection == "star"
     return BridgeStress(
-        line_current_rms_A=line_rms,
-        line_current_peak_A=_for_each(lambda leg: peak(stretches, _line(leg))),
-        branch_current_rms_A=_for_each(lambda k: sqrt(branch_square[k])),
-        line_voltage_rms_V=voltage_rms,
-        line_voltage_fundamental_rms_V=fundamental,
+        line_current_rms_A=_roots(line_square),
+        line_current_peak_A=_for_each(lambda leg: peak(half, LINE_CURRENT[leg])),
+        branch_current_rms_A=_roots(branch_square),
+        line_voltage_rms_V=line_V,
+        line_voltage_fundamental_rms_V=fundamental_V,
         line_voltage_thd=_for_each(
-            lambda k: total_harmonic_distortion(voltage_rms[k], fundamental[k])
+            lambda k: total_harmonic_distortion(line_V[k], fundamental_V[k])
         ),
-        phase_voltage_rms_V=_phase_voltage_rms(bridge, stretches),
+        phase_voltage_rms_V=_roots(_squares(half, BRANCH_VOLTAGE)) if star else None,
         load_power_W=sum(
             R * square for R, square in zip(bridge.resistance_ohm, branch_square, strict=True)
         ),
@@ -66,8 +99,8 @@ def stress_of(state: SteadyState) -> BridgeStress:
         link_current_avg_A=link_avg,
         link_current_rms_A=sqrt(link_square),
         link_current_ripple_rms_A=sqrt(max(0.0, link_square - link_avg * link_avg)),
-        positions=tuple(_position(bridge, stretches, index) for index in range(6)),
-        events=events_of(bridge, stretches),
+        positions=_positions(state),
+        events=events_of(state),
     )
 
 
@@ -75,57 +108,52 @@ def _for_each(of: Callable[[int], float]) -> Triple:
     return of(0), of(1), of(2)
 
 
-def _line(leg: int) -> Waveform:
-    return lambda stretch: stretch.line[leg]
+def _squares(half: Stretches, waveforms: tuple[Waveform, ...]) -> Triple:
+    return _for_each(lambda k: mean_square(half, waveforms[k]))
 
 
-def _branch(branch: int) -> Waveform:
-    return lambda stretch: stretch.piece.branch_current(branch)
+def _roots(squares: Triple) -> Triple:
+    a, b, c = squares
+    return sqrt(a), sqrt(b), sqrt(c)
 
 
-def _line_voltage(first: int) -> Waveform:
-    def difference(stretch: Stretch) -> Coefficients:
-        a, b = stretch.terminal[first], stretch.terminal[(first + 1) % 3]
-        return tuple(x - y for x, y in zip(a, b, strict=True))
-
-    return difference
-
-
-def _link_current(stretch: Stretch) -> Coefficients | None:
-    """Current out of the link's positive rail: the sum of the legs that stand at it."""
-    upper = [stretch.line[leg] for leg in range(3) if stretch.piece.legs[leg] > 0]
-    return tuple(map(sum, zip(*upper, strict=True))) if upper else None
+def _positions(state: SteadyState) -> tuple[PositionStress, ...]:
+    found: dict[int, PositionStress] = {}
+    for leg in range(3):
+        upper = found[UPPER_OF_LEG[leg]] = _upper_position(state, leg)
+        lower = LOWER_OF_LEG[leg]
+        found[lower] = msgspec.structs.replace(upper, position=POSITIONS[lower])
+    return tuple(found[index] for index in range(6))
 
 
-def _phase_voltage_rms(bridge: Bridge, stretches: Stretches) -> Triple | None:
-    if bridge.connection == "delta":
-        return None
-    return _for_each(
-        lambda k: rms(stretches, lambda stretch: stretch.piece.branch_voltage(k), bridge.period_s)
+def _upper_position(state: SteadyState, leg: int) -> PositionStress:
+    bridge = state.bridge
+    half = half_period(state)
+    index = UPPER_OF_LEG[leg]
+    window = window_of(state, index)
+    forward_V, reverse_V = _blocking_peaks(half, leg, bridge.voltage_V)
+    in_switch = [part for part in half if part.signs[leg] and part.signs[leg] == part.legs[leg]]
+    in_diode = [part for part in half if part.signs[leg] and part.signs[leg] == -part.legs[leg]]
+    switch, diode = (
+        _device_currents(parts, leg, bridge.period_s) for parts in (in_switch, in_diode)
     )
-
-
-def _position(bridge: Bridge, stretches: Stretches, index: int) -> PositionStress:
-    leg, side = LEG_OF_POSITION[index], 1 if UPPER[index] else -1
-    window = window_of(bridge, stretches, index)
-    forward_V, reverse_V = _blocking_peaks(stretches, leg, side)
-    peak_A = peak(stretches, _in_switch(leg, side))
-    kind = turn_off_kind(window, peak_A)
-    freewheel = freewheel_s(window) if kind == "forced" else 0.0
+    kind = turn_off_kind(window, switch.peak_A)
+    forced = kind == "forced"
+    freewheel = freewheel_s(window) if forced else 0.0
     return PositionStress(
         position=POSITIONS[index],
         switch=SwitchStress(
-            current_avg_A=abs(mean(stretches, _in_switch(leg, side), bridge.period_s)),
-            current_rms_A=rms(stretches, _in_switch(leg, side), bridge.period_s),
-            current_peak_A=peak_A,
-            gate_off_current_A=gate_off_current_A(window) if kind == "forced" else 0.0,
+            current_avg_A=switch.average_A,
+            current_rms_A=switch.rms_A,
+            current_peak_A=switch.peak_A,
+            gate_off_current_A=gate_off_current_A(window) if forced else 0.0,
             forward_blocking_peak_V=forward_V,
             reverse_blocking_peak_V=reverse_V,
         ),
         diode=DiodeStress(
-            current_avg_A=abs(mean(stretches, _in_diode(leg, side), bridge.period_s)),
-            current_rms_A=rms(stretches, _in_diode(leg, side), bridge.period_s),
-            current_peak_A=peak(stretches, _in_diode(leg, side)),
+            current_avg_A=diode.average_A,
+            current_rms_A=diode.rms_A,
+            current_peak_A=diode.peak_A,
             reverse_blocking_peak_V=forward_V,
         ),
         dead_interval_s=bridge.dead_interval_s,
@@ -133,30 +161,44 @@ def _position(bridge: Bridge, stretches: Stretches, index: int) -> PositionStres
         overrun_s=max(0.0, freewheel - bridge.dead_interval_s),
         turn_off=kind,
         forward_reapplied_s=_reapplied_s(kind, window, bridge),
-        reapplied_step_V=reapplied_step_V(window) if kind == "forced" else None,
+        reapplied_step_V=reapplied_step_V(window) if forced else None,
         turn_on_delay_s=turn_on_delay_s(window),
     )
 
 
-def _reapplied_s(kind: str, window: Window, bridge: Bridge) -> float | None:
+class _DeviceCurrents(NamedTuple):
+    average_A: float
+    rms_A: float
+    peak_A: float
+
+
+def _device_currents(parts: list[Stretch], leg: int, period_s: float) -> _DeviceCurrents:
+    """A device's currents over one period, from the half in which it or its opposite conducts."""
+    total = square = 0.0
+    for part in parts:
+        f = part.line[leg]
+        total += abs(integral(f, part.gram[0]))
+        square += integral_of_square(f, part.gram)
+    return _DeviceCurrents(
+        total / period_s, sqrt(max(0.0, square) / period_s), peak(parts, LINE_CURRENT[leg])
+    )
+
+
+def _reapplied_s(kind: TurnOff, window: Window, bridge: Bridge) -> float | None:
     if kind == "idle":
         return None
     return 0.0 if kind == "forced" else forward_reapplied_s(window, bridge)
 
 
-def _in_switch(leg: int, side: int) -> Waveform:
-    return lambda stretch: stretch.line[leg] if stretch.in_switch(leg, side) else None
+def _blocking_peaks(half: Stretches, leg: int, link_V: float) -> tuple[float, float]:
+    """Highest forward and reverse voltage on a position, both sides of every jump counted.
 
-
-def _in_diode(leg: int, side: int) -> Waveform:
-    return lambda stretch: stretch.line[leg] if stretch.in_diode(leg, side) else None
-
-
-def _blocking_peaks(stretches: Stretches, leg: int, side: int) -> tuple[float, float]:
-    """Highest forward and reverse voltage on a position, both sides of every jump counted."""
-    lowest = highest = 0.0
-    for stretch in stretches:
-        low, high = extremes(stretch, stretch.forward_voltage(leg, side))
+    The upper position has the link voltage less the terminal's, the lower one the terminal's.
+    """
+    lowest, highest = link_V, 0.0
+    for stretch in half:
+        low, high = extremes(stretch, stretch.terminal[leg])
         lowest, highest = min(lowest, low), max(highest, high)
+    forward_V, reverse_V = max(link_V - lowest, highest), max(highest - link_V, -lowest)
     # An open leg rests against a rail to within rounding: that is no reverse voltage.
-    return highest, -lowest if -lowest > 1e-9 * highest else 0.0
+    return forward_V, reverse_V if reverse_V > _NO_VOLTAGE * link_V else 0.0

@@ -11,8 +11,11 @@ from math import exp, expm1
 
 from engine.roots import Coefficients, Rates, psi
 
+Gram = tuple[tuple[float, ...], ...]
+
 _SERIES_BELOW = 0.7
-_TERMS = 22
+_NEGLIGIBLE = 1e-18
+_MOST_TERMS = 40
 
 
 def integral_of_psi(rate: float, s: float) -> float:
@@ -21,9 +24,11 @@ def integral_of_psi(rate: float, s: float) -> float:
     if abs(x) >= _SERIES_BELOW:
         return (psi(rate, s) - s) / rate
     term = total = 0.5
-    for n in range(3, _TERMS):
+    for n in range(3, _MOST_TERMS):
         term *= x / n
         total += term
+        if abs(term) < _NEGLIGIBLE:
+            break
     return total * s * s
 
 
@@ -32,23 +37,28 @@ def integral_of_product(rate_a: float, rate_b: float, s: float) -> float:
     if abs(rate_a) < abs(rate_b):
         rate_a, rate_b = rate_b, rate_a
     if abs(rate_a * s) < _SERIES_BELOW:
-        return s**3 * _double_series(rate_a * s, rate_b * s)
+        return s**3 * _product_series(rate_a * s, rate_b * s)
     # ψₐ = (e^{as} − 1)/a, and the exponential part by parts.
     both = rate_a + rate_b
     weighted = (exp(rate_a * s) * psi(rate_b, s) - expm1(both * s) / both) / rate_a
     return (weighted - integral_of_psi(rate_b, s)) / rate_a
 
 
-def _double_series(x: float, y: float) -> float:
-    """Σ xᵐyⁿ / ((m+1)! (n+1)! (m+n+3)), the product's integral over s³."""
-    total = 0.0
-    x_term = 1.0
-    for m in range(_TERMS):
-        y_term = x_term
-        for n in range(_TERMS - m):
-            total += y_term / (m + n + 3)
-            y_term *= y / (n + 2)
-        x_term *= x / (m + 2)
+def _product_series(x: float, y: float) -> float:
+    """The product's integral over s³, Σₙ Pₙ/(n + 1)! from n = 2.
+
+    Pₙ = ((x + y)ⁿ − xⁿ − yⁿ)/xy, by Pₙ₊₁ = (x + y)Pₙ + xⁿ⁻¹ + yⁿ⁻¹ without cancellation.
+    """
+    both, x_power, y_power = x + y, x, y
+    part, factorial, total = 2.0, 6.0, 1.0 / 3.0
+    for n in range(3, _MOST_TERMS):
+        part = both * part + x_power + y_power
+        x_power *= x
+        y_power *= y
+        factorial *= n + 1
+        total += part / factorial
+        if abs(part) < _NEGLIGIBLE * factorial:
+            break
     return total
 
 
@@ -59,7 +69,7 @@ def fourier_of_psi(rate: float, s: float, omega: float) -> complex:
     return (exponential - psi(rate, s) * cexp(-1j * omega * s)) / (1j * omega)
 
 
-def gram(rates: Rates, s: float) -> tuple[tuple[float, ...], ...]:
+def gram(rates: Rates, s: float) -> Gram:
     """∫₀ˢ of every product of (1, ψ₁ … ψ_n): symmetric, (n + 1, n + 1)."""
     first = [s, *(integral_of_psi(rate, s) for rate in rates)]
     rows = [tuple(first)]
@@ -73,15 +83,18 @@ def gram(rates: Rates, s: float) -> tuple[tuple[float, ...], ...]:
 
 def integral(f: Coefficients, moments: tuple[float, ...]) -> float:
     """∫f, with the first row of the Gram matrix."""
-    return sum(c * m for c, m in zip(f, moments, strict=True))
+    total = 0.0
+    for c, moment in zip(f, moments, strict=True):
+        total += c * moment
+    return total
 
 
-def integral_of_square(f: Coefficients, g: tuple[tuple[float, ...], ...]) -> float:
+def integral_of_square(f: Coefficients, gram_matrix: Gram) -> float:
     """∫f², with the Gram matrix."""
     total = 0.0
-    for i, a in enumerate(f):
+    for a, row in zip(f, gram_matrix, strict=True):
         if a:
-            total += a * sum(b * m for b, m in zip(f, g[i], strict=True))
+            total += a * integral(f, row)
     return total
 
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from engine.conduction import Stretch, stretches_of
+from engine.conduction import Stretch
 from engine.roots import first_fall
 from engine.steady_state import SteadyState
 from engine.turn_off import Window, rises_of, window_of
@@ -14,7 +14,7 @@ def time_to_reach(state: SteadyState, position: int, current_A: float) -> float 
 
     `None` when the switch (0..5 = T1..T6) carries nothing, or never that much before gate-off.
     """
-    window = window_of(state.bridge, stretches_of(state), position)
+    window = window_of(state, position)
     rises = rises_of(window)
     if not rises:
         return None
@@ -38,7 +38,7 @@ def _first_reach(stretch: Stretch, window: Window, current_A: float) -> float | 
 
 def least_current_after(state: SteadyState, position: int, time_s: float) -> float:
     """Smallest current of a switch from a time after its gate-on to its gate-off, A."""
-    window = window_of(state.bridge, stretches_of(state), position)
+    window = window_of(state, position)
     least = float("inf")
     begin_s = 0.0
     for stretch in window.inside:

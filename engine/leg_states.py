@@ -1,23 +1,25 @@
 """Which diodes conduct: the one leg state that fits the gates and the currents.
 
-Each ungated leg is at the positive rail (its upper diode carries current out of the load),
-at the negative rail, or open with its voltage between the rails. Of the at most 27 states
-exactly one is consistent; it is the solution of a linear complementarity problem. It is found
-as the state of least violation a moment after the edge.
+An ungated leg whose current cannot jump stands at the rail whose diode takes that current.
+Without current it is at the positive rail, at the negative rail, or open with its voltage
+between the rails; of these states exactly one is consistent, the solution of a linear
+complementarity problem. It is found as the state of least violation a moment after the edge.
 """
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterable
 from itertools import product
 
 from engine.bridge import Bridge
 from engine.duty import Triple
-from engine.pieces import Legs, Piece, piece_from, terminal_voltages
+from engine.load_network import dot, line_forms
+from engine.pieces import Legs, Piece, circuit_of, piece_from, terminal_voltages
 from engine.roots import value
 
 _MOMENT = 1e-9  # of a period
 _NOTHING = 1e-11  # a violation below this is rounding
+_FLOWS = 1e-9  # of the scale of currents: above this an inductive current is sure to flow
 
 
 def current_scale_A(bridge: Bridge) -> float:
@@ -31,27 +33,46 @@ def consistent_piece(
 ) -> Piece:
     """The piece of the leg state that holds from here on, its duration still zero.
 
-    `last` is preferred among equals; with `left` it has just come to its end and is not taken.
+    `last` is preferred among equals, then the state with most open legs; with `left` the last
+    one has just come to its end and is not taken.
     """
-    best: tuple[tuple[float, bool, int], Piece] | None = None
-    for legs in _candidates(bridge, gates):
-        if left and legs == last:
-            continue
-        piece = piece_from(bridge, start_s, 0.0, legs, gates, currents)
-        violation = _violation(piece, currents)
-        rank = (violation if violation > _NOTHING else 0.0, legs != last, -legs.count(0))
-        if best is None or rank < best[0]:
-            best = rank, piece
+    states = list(_candidates(bridge, gates, currents))
+    if len(states) > 1:
+        states.sort(key=lambda legs: (legs != last, -legs.count(0)))
+        if left and last in states:
+            states.remove(last)
+    best: Piece | None = None
+    least = float("inf")
+    for legs in states:
+        piece = piece_from(circuit_of(bridge, legs), gates, start_s, currents)
+        violation = _violation(piece, currents) if len(states) > 1 else 0.0
+        if violation < least:
+            best, least = piece, violation
+        if violation <= _NOTHING:
+            break
     assert best is not None
-    return best[1]
+    return best
 
 
-def _candidates(bridge: Bridge, gates: Legs) -> Iterator[Legs]:
-    if not bridge.feedback_diodes:
-        yield gates
-        return
-    choices = [(gate,) if gate else (1, -1, 0) for gate in gates]
-    yield from product(*choices)
+def _candidates(bridge: Bridge, gates: Legs, currents: Triple) -> Iterable[Legs]:
+    if not bridge.feedback_diodes or all(gates):
+        return (gates,)
+    flows = _FLOWS * current_scale_A(bridge)
+    choices: list[tuple[int, ...]] = []
+    for gate, row in zip(gates, line_forms(bridge.connection), strict=True):
+        current = dot(row, currents)
+        if gate:
+            choices.append((gate,))
+        elif abs(current) > flows and _cannot_jump(bridge, row):
+            choices.append((-1,) if current > 0.0 else (1,))
+        else:
+            choices.append((1, -1, 0))
+    return product(*choices)  # type: ignore[return-value]
+
+
+def _cannot_jump(bridge: Bridge, row: Triple) -> bool:
+    """Whether every branch that meets at a terminal has inductance."""
+    return all(L > 0.0 for L, part in zip(bridge.inductance_H, row, strict=True) if part)
 
 
 def _violation(piece: Piece, before: Triple) -> float:
@@ -59,8 +80,6 @@ def _violation(piece: Piece, before: Triple) -> float:
     bridge = piece.bridge
     scale_A = current_scale_A(bridge)
     total = _lost_flux(piece, before) / scale_A
-    if all(piece.gates):
-        return total
     moment = _MOMENT * bridge.period_s
     voltages = None
     for leg, gate in enumerate(piece.gates):
@@ -68,7 +87,8 @@ def _violation(piece: Piece, before: Triple) -> float:
             continue
         state = piece.legs[leg]
         if state:
-            total += max(0.0, state * value(piece.line_current(leg), piece.rates, moment) / scale_A)
+            current = value(piece.function(piece.circuit.line[leg]), piece.rates, moment)
+            total += max(0.0, state * current / scale_A)
         else:
             voltages = voltages or terminal_voltages(piece)
             volts = value(voltages[leg], piece.rates, moment)

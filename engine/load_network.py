@@ -35,15 +35,6 @@ class Mode:
     dynamic: bool
 
 
-@dataclass(frozen=True, slots=True)
-class Pattern:
-    """The load with a given set of open legs."""
-
-    modes: tuple[Mode, ...]
-    line: tuple[Triple, Triple, Triple]
-    """Line current of legs A, B, C out of the bridge, as a form in the branch currents."""
-
-
 def line_forms(connection: Literal["star", "delta"]) -> tuple[Triple, Triple, Triple]:
     """Line currents A, B, C as linear forms in the branch currents."""
     if connection == "star":
@@ -52,21 +43,20 @@ def line_forms(connection: Literal["star", "delta"]) -> tuple[Triple, Triple, Tr
 
 
 @lru_cache(maxsize=4096)
-def pattern_of(
+def modes_of(
     connection: Literal["star", "delta"],
     resistance_ohm: Triple,
     inductance_H: Triple,
     open_legs: tuple[int, ...],
-) -> Pattern:
+) -> tuple[Mode, ...]:
     """The modes of the load when these legs (0, 1, 2) are open."""
     basis = _basis(connection, open_legs)
     total_L = sum(inductance_H)
     sigma = sum(resistance_ohm) / total_L if total_L else 1.0
-    modes = tuple(
+    return tuple(
         _mode(shape, resistance_ohm, inductance_H, sigma)
         for shape in _decoupled(basis, resistance_ohm, inductance_H, sigma)
     )
-    return Pattern(modes, line_forms(connection))
 
 
 def _basis(connection: str, open_legs: tuple[int, ...]) -> tuple[Triple, ...]:

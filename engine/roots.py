@@ -19,6 +19,21 @@ def psi(rate: float, s: float) -> float:
     return expm1(rate * s) / rate if rate else s
 
 
+def scaled(f: Coefficients, by: float) -> Coefficients:
+    """f times a factor."""
+    return tuple(by * c for c in f)
+
+
+def added(f: Coefficients, g: Coefficients) -> Coefficients:
+    """f + g."""
+    return tuple(a + b for a, b in zip(f, g, strict=True))
+
+
+def difference(f: Coefficients, g: Coefficients) -> Coefficients:
+    """f − g."""
+    return tuple(a - b for a, b in zip(f, g, strict=True))
+
+
 def value(f: Coefficients, rates: Rates, s: float) -> float:
     """f(s)."""
     total = f[0]
@@ -36,7 +51,11 @@ def derivative(f: Coefficients, rates: Rates) -> Coefficients:
 
 def slope(f: Coefficients, rates: Rates, s: float) -> float:
     """f′(s)."""
-    return sum(b * exp(rate * s) for b, rate in zip(f[1:], rates, strict=True) if b)
+    total = 0.0
+    for b, rate in zip(f[1:], rates, strict=True):
+        if b:
+            total += b * exp(rate * s)
+    return total
 
 
 def first_fall(
@@ -45,35 +64,41 @@ def first_fall(
     """First instant in (start, end) at which f falls through zero, `None` when it does not.
 
     `slack` is the size below which a value counts as zero: f may start there, and a dip that
-    stays above −slack is no fall. With |f″| ≤ B on the rest of the piece (the exponentials
-    only decay) the step (f′ + √(f′² + 2Bf))/B never passes a zero.
+    stays above −slack is no fall.
     """
     s = start
     for _ in range(_MOST_STEPS):
-        height = value(f, rates, s) + slack
-        if height <= 0.0:
+        height, step = _safe_step(f, rates, s, slack)
+        if height <= 0.0 or (step is not None and step <= 4e-16 * s):
             return _polished(f, rates, s, start)
-        step = _safe_step(f, rates, s, height)
         if step is None or s + step >= end:
             return None
-        if step <= 4e-16 * s:
-            return _polished(f, rates, s, start)
         s += step
     return _polished(f, rates, s, start)
 
 
-def _safe_step(f: Coefficients, rates: Rates, s: float, height: float) -> float | None:
-    """Longest step over which a function of this height and curvature cannot reach zero."""
-    fall = 0.0
-    bend = 0.0
+def _safe_step(f: Coefficients, rates: Rates, s: float, slack: float) -> tuple[float, float | None]:
+    """Height f + slack at s, and a step that cannot pass a zero of it, `None`: there is none.
+
+    With |f″| ≤ B on all that follows (the exponentials only decay) the height stays positive
+    for (f′ + √(f′² + 2B·height))/B, a step that is quadratic at a simple zero.
+    """
+    height = f[0] + slack
+    rise = bend = 0.0
     for b, rate in zip(f[1:], rates, strict=True):
-        now = b * exp(rate * s)
-        fall += now
+        if not b:
+            continue
+        grown = expm1(rate * s)
+        height += b * (grown / rate if rate else s)
+        now = b * (grown + 1.0)
+        rise += now
         bend += abs(now * rate)
+    if height <= 0.0:
+        return height, 0.0
     if bend == 0.0:
-        return -height / fall if fall < 0.0 else None
-    reach = sqrt(fall * fall + 2.0 * bend * height)
-    return (fall + reach) / bend if fall >= 0.0 else 2.0 * height / (reach - fall)
+        return height, -height / rise if rise < 0.0 else None
+    reach = sqrt(rise * rise + 2.0 * bend * height)
+    return height, (rise + reach) / bend if rise >= 0.0 else 2.0 * height / (reach - rise)
 
 
 def _polished(f: Coefficients, rates: Rates, s: float, start: float) -> float:
@@ -92,12 +117,14 @@ def _polished(f: Coefficients, rates: Rates, s: float, start: float) -> float:
 def crossings(f: Coefficients, rates: Rates, end: float, slack: float) -> list[float]:
     """Every instant in (0, end) at which f changes sign, in order."""
     found: list[float] = []
+    if not any(f[1:]):
+        return found
     s = 0.0
     while len(found) <= 2 * len(f):
         sign = _sign_after(f, rates, s, end, slack)
         if sign == 0:
             return found
-        g = tuple(sign * c for c in f)
+        g = f if sign > 0 else tuple(-c for c in f)
         s_next = first_fall(g, rates, end, slack, s)
         if s_next is None:
             return found
@@ -108,15 +135,12 @@ def crossings(f: Coefficients, rates: Rates, end: float, slack: float) -> list[f
 
 def _sign_after(f: Coefficients, rates: Rates, s: float, end: float, slack: float) -> int:
     """Sign that f takes on after s: of its value, else of its lowest derivative there."""
-    here = value(f, rates, s)
-    if abs(here) > slack:
-        return 1 if here > 0.0 else -1
     g = f
-    scale = end
-    for _ in range(len(f)):
-        g = derivative(g, rates)
+    scale = 1.0
+    for _ in range(1 + len(f)):
         here = value(g, rates, s) * scale
         if abs(here) > slack:
             return 1 if here > 0.0 else -1
+        g = derivative(g, rates)
         scale *= end
     return 0

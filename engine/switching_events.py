@@ -2,35 +2,56 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+
+import msgspec
+
 from engine.bridge import LEG_OF_POSITION, POSITIONS, UPPER, Bridge
-from engine.conduction import NO_CURRENT, Stretch
+from engine.conduction import NO_CURRENT, Stretch, half_period
 from engine.leg_states import current_scale_A
 from engine.roots import slope, value
+from engine.steady_state import SteadyState
 from engine.stress import Kind, SwitchingEvent
 
 Conductor = tuple[int, str]
 
 
-def events_of(bridge: Bridge, stretches: tuple[Stretch, ...]) -> tuple[SwitchingEvent, ...]:
+def events_of(state: SteadyState) -> tuple[SwitchingEvent, ...]:
     """Every change of conducting device over one period, in order of time."""
-    events = []
-    nothing_A = NO_CURRENT * current_scale_A(bridge)
-    for index, after in enumerate(stretches):
-        before = stretches[index - 1]
-        for leg in range(3):
-            old, new = before.conductor(leg), after.conductor(leg)
-            if old == new:
-                continue
-            if old is not None:
-                events.append(_off(before, after, old, new, nothing_A))
-            if new is not None:
-                events.append(_on(before, after, new, nothing_A))
-    return tuple(events)
+    half = half_period(state)
+    first: list[SwitchingEvent] = []
+    before = half[-1].mirrored()  # what precedes the first stretch, half a period early
+    for after in half:
+        first += _changes(before, after)
+        before = after
+    return (*first, *(_opposite(event, state.bridge) for event in first))
 
 
-def _off(
-    before: Stretch, after: Stretch, old: Conductor, new: Conductor | None, nothing_A: float
-) -> SwitchingEvent:
+def _changes(before: Stretch, after: Stretch) -> Iterator[SwitchingEvent]:
+    if before.legs == after.legs and before.signs == after.signs:
+        return
+    nothing_A = NO_CURRENT * current_scale_A(after.piece.bridge)
+    for leg in range(3):
+        old, new = before.conductor(leg), after.conductor(leg)
+        if old == new:
+            continue
+        if old is not None:
+            yield _off(before, after, old, nothing_A)
+        if new is not None:
+            yield _on(before, after, new, nothing_A)
+
+
+def _opposite(event: SwitchingEvent, bridge: Bridge) -> SwitchingEvent:
+    """The same event of the opposite position, half a period later."""
+    return msgspec.structs.replace(
+        event,
+        angle_deg=event.angle_deg + 180.0,
+        time_s=event.time_s + 0.5 * bridge.period_s,
+        position=POSITIONS[(POSITIONS.index(event.position) + 3) % 6],
+    )
+
+
+def _off(before: Stretch, after: Stretch, old: Conductor, nothing_A: float) -> SwitchingEvent:
     """A device ceases: its current just before, the voltage that then stands on it."""
     position, device = old
     leg = LEG_OF_POSITION[position]

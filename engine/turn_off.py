@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import lru_cache
 
 from engine.bridge import LEG_OF_POSITION, UPPER, Bridge
-from engine.conduction import NO_CURRENT, Stretch
+from engine.conduction import NO_CURRENT, Stretch, stretches_of
 from engine.gating import gate_on_s, gate_window_s
 from engine.roots import value
+from engine.steady_state import SteadyState
 from engine.stress import TurnOff
 
 _NO_VOLTAGE = 1e-9  # of the link voltage
@@ -26,8 +28,10 @@ class Window:
         return stretch.in_switch(self.leg, self.side)
 
 
-def window_of(bridge: Bridge, stretches: tuple[Stretch, ...], position: int) -> Window:
+@lru_cache(maxsize=256)
+def window_of(state: SteadyState, position: int) -> Window:
     """The stretches of one period, begun at this position's gate-on and parted at its gate-off."""
+    bridge, stretches = state.bridge, stretches_of(state)
     period_s = bridge.period_s
     on_s = gate_on_s(bridge, position) % period_s
     off_s = (on_s + gate_window_s(bridge)) % period_s
@@ -39,6 +43,8 @@ def window_of(bridge: Bridge, stretches: tuple[Stretch, ...], position: int) -> 
 
 
 def _index_at(stretches: tuple[Stretch, ...], time_s: float, period_s: float) -> int:
+    """The stretch that begins at an instant of the period."""
+
     def apart(index: int) -> float:
         gap = abs(stretches[index].start_s - time_s)
         return min(gap, period_s - gap)

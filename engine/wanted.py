@@ -10,6 +10,7 @@ from __future__ import annotations
 from bisect import bisect_left
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
+from functools import partial
 from typing import Literal
 
 import numpy as np
@@ -33,19 +34,25 @@ IGBT_CLASSES_V = (600, 650, 1200, 1700, 2500, 3300, 4500, 6500)
 """Classes in which IGBTs are sold (common practice, no source)."""
 
 
+Stress = Callable[[StressTable, RuleSet], Array]
+
+
 @dataclass(frozen=True, slots=True)
 class _Want:
-    """One line: which stress, at which corners, and how it becomes a rating."""
+    """One line: which stress becomes which rating. `kind`: whose permitted fraction holds.
+
+    Thermal stresses are looked up at the load factors of the overload cycle, at high ambient;
+    the others at light, nominal and overload.
+    """
 
     id: str
     rating: str
     unit: str
-    table: Callable[[SolvedDuty], StressTable]
-    stress: Callable[[StressTable, RuleSet], Array]
+    stress: Stress
     words: str
-    ambient: Literal["nominal", "high"] = "nominal"
+    thermal: bool = False
     classes: Sequence[int] = ()
-    fraction_kind: str = "switch"
+    kind: str = "switch"
 
 
 def wanted_of(solved: SolvedDuty, rules: RuleSet, kinds: Sequence[Kind]) -> tuple[Wanted, ...]:
@@ -61,11 +68,11 @@ def wanted_of(solved: SolvedDuty, rules: RuleSet, kinds: Sequence[Kind]) -> tupl
 
 
 def _wanted(want: _Want, solved: SolvedDuty, rules: RuleSet) -> Wanted:
-    table = want.table(solved)
+    table = solved.thermal if want.thermal else solved.instantaneous
     stress = want.stress(table, rules)
     point, position = _first_of(stress, np.nanmax(stress))
     applied = float(stress[point, position])
-    fraction = rules.fraction(want.id, want.fraction_kind)
+    fraction = rules.fraction(want.id, want.kind)
     value = applied / (fraction * rules.adequate_share)
     return Wanted(
         id=want.id,
@@ -73,7 +80,7 @@ def _wanted(want: _Want, solved: SolvedDuty, rules: RuleSet) -> Wanted:
         value=value,
         unit=want.unit,
         position=POSITIONS[position] if stress.shape[1] > 1 else None,
-        corner=_corner(solved, table, point, want.ambient),
+        corner=_corner(solved, table, point, "high" if want.thermal else "nominal"),
         next_class=_next_class(value, want.classes),
         how=f"{want.words} {quantity(applied, want.unit)}/({number(fraction)} × "
         f"{number(rules.adequate_share)}) = {quantity(value, want.unit)}",
@@ -130,14 +137,6 @@ def _wanted_tq(solved: SolvedDuty, rules: RuleSet) -> list[Wanted]:
     ]
 
 
-def _instantaneous(solved: SolvedDuty) -> StressTable:
-    return solved.instantaneous
-
-
-def _thermal(solved: SolvedDuty) -> StressTable:
-    return solved.thermal
-
-
 def _link(table: StressTable, rules: RuleSet) -> Array:
     return table.points.voltage_V[:, None]
 
@@ -146,109 +145,47 @@ def _link_peak(table: StressTable, rules: RuleSet) -> Array:
     return _link(table, rules) * rules.factor("transient_overshoot")
 
 
+def _column(name: str) -> Stress:
+    return lambda table, rules: getattr(table, name)
+
+
 def _nominal_peak(table: StressTable, rules: RuleSet) -> Array:
     return np.where(table.points.load_factor[:, None] == 1.0, table.switch_peak_A, np.nan)
 
 
-_PEAK = "link voltage × transient factor"
-_AVERAGE = "real average, its form factor and the case temperature left out,"
+_peak = partial(_Want, unit="V", stress=_link_peak, words="link voltage × transient factor")
+_steady = partial(_Want, unit="V", stress=_link, words="link voltage")
+_average = partial(
+    _Want,
+    unit="A",
+    words="real average, its form factor and the case temperature left out,",
+    thermal=True,
+)
+_rms = partial(_Want, unit="A", words="rms", thermal=True)
+_peak_current = partial(_Want, unit="A", words="peak")
+_BARE_LINK = "link voltage, without the overshoot of its own fall time"
 
 _SWITCH: dict[Kind, tuple[_Want, ...]] = {
     "thyristor": (
-        _Want(
-            "switch.V_DRM",
-            "V_DRM",
-            "V",
-            _instantaneous,
-            _link_peak,
-            _PEAK,
-            classes=VOLTAGE_CLASSES_V,
-        ),
-        _Want(
-            "switch.I_TAV",
-            "I_T(AV)",
-            "A",
-            _thermal,
-            lambda table, rules: table.switch_average_A,
-            _AVERAGE,
-            ambient="high",
-        ),
-        _Want(
-            "switch.I_TRMS", "I_T(RMS)", "A", _thermal, lambda table, _: table.switch_rms_A, "rms"
-        ),
-        _Want(
-            "switch.I_TRM",
-            "I_TRM",
-            "A",
-            _instantaneous,
-            lambda table, _: table.switch_peak_A,
-            "peak",
-        ),
-        _Want(
-            "switch.V_steady",
-            "V_DRM, steady",
-            "V",
-            _instantaneous,
-            _link,
-            "link voltage",
-            classes=VOLTAGE_CLASSES_V,
-        ),
-        _Want("switch.V_isol", "V_isol", "V", _instantaneous, _link, "link voltage"),
+        _peak("switch.V_DRM", "V_DRM", classes=VOLTAGE_CLASSES_V),
+        _average("switch.I_TAV", "I_T(AV)", stress=_column("switch_average_A")),
+        _rms("switch.I_TRMS", "I_T(RMS)", stress=_column("switch_rms_A")),
+        _peak_current("switch.I_TRM", "I_TRM", stress=_column("switch_peak_A")),
+        _steady("switch.V_steady", "V_DRM, steady", classes=VOLTAGE_CLASSES_V),
+        _steady("switch.V_isol", "V_isol"),
     ),
     "igbt": (
-        _Want(
-            "switch.V_CES",
-            "V_CES",
-            "V",
-            _instantaneous,
-            _link,
-            "link voltage, without the overshoot of its own fall time",
-            classes=IGBT_CLASSES_V,
-        ),
-        _Want("switch.I_C", "I_C", "A", _instantaneous, _nominal_peak, "peak at nominal load"),
-        _Want(
-            "switch.I_CRM",
-            "I_CRM",
-            "A",
-            _instantaneous,
-            lambda table, _: table.switch_peak_A,
-            "peak",
-        ),
-        _Want(
-            "switch.V_steady",
-            "V_CES, steady",
-            "V",
-            _instantaneous,
-            _link,
-            "link voltage",
-            classes=IGBT_CLASSES_V,
-            fraction_kind="igbt",
-        ),
+        _steady("switch.V_CES", "V_CES", words=_BARE_LINK, classes=IGBT_CLASSES_V),
+        _Want("switch.I_C", "I_C", "A", _nominal_peak, "peak at nominal load"),
+        _peak_current("switch.I_CRM", "I_CRM", stress=_column("switch_peak_A")),
+        _steady("switch.V_steady", "V_CES, steady", classes=IGBT_CLASSES_V, kind="igbt"),
     ),
 }
 
 _DIODE: tuple[_Want, ...] = (
-    _Want(
-        "diode.V_RRM", "V_RRM", "V", _instantaneous, _link_peak, _PEAK, classes=VOLTAGE_CLASSES_V
-    ),
-    _Want(
-        "diode.I_FAV",
-        "I_F(AV)",
-        "A",
-        _thermal,
-        lambda table, _: table.diode_average_A,
-        _AVERAGE,
-        ambient="high",
-    ),
-    _Want("diode.I_FRMS", "I_F(RMS)", "A", _thermal, lambda table, _: table.diode_rms_A, "rms"),
-    _Want("diode.I_FRM", "I_FRM", "A", _instantaneous, lambda table, _: table.diode_peak_A, "peak"),
-    _Want(
-        "diode.V_steady",
-        "V_RRM, steady",
-        "V",
-        _instantaneous,
-        _link,
-        "link voltage",
-        classes=VOLTAGE_CLASSES_V,
-    ),
+    _peak("diode.V_RRM", "V_RRM", classes=VOLTAGE_CLASSES_V),
+    _average("diode.I_FAV", "I_F(AV)", stress=_column("diode_average_A")),
+    _rms("diode.I_FRMS", "I_F(RMS)", stress=_column("diode_rms_A")),
+    _peak_current("diode.I_FRM", "I_FRM", stress=_column("diode_peak_A")),
+    _steady("diode.V_steady", "V_RRM, steady", classes=VOLTAGE_CLASSES_V),
 )

@@ -1,78 +1,94 @@
-"""Averages, rms values, peaks and Fourier coefficients of one period, from exact integrals."""
+"""Averages, rms values, peaks and Fourier coefficients from exact integrals over stretches."""
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable
+from collections.abc import Callable, Sequence
 from math import pi, sqrt
+from operator import attrgetter
 
-from engine.conduction import Stretch
+from engine.conduction import Functions, Stretch
 from engine.integrals import fourier, integral, integral_of_square
 from engine.roots import Coefficients, crossings, derivative, value
 
-Waveform = Callable[[Stretch], Coefficients | None]
-"""The quantity's coefficients on a stretch; `None` where it is zero."""
+Waveform = Callable[[Stretch], Coefficients]
+"""A quantity's coefficients on a stretch."""
 
 
-def mean(stretches: Iterable[Stretch], waveform: Waveform, period_s: float) -> float:
-    """Average over the period."""
-    total = 0.0
-    for stretch in stretches:
-        f = waveform(stretch)
-        if f is not None:
-            total += integral(f, stretch.gram[0])
-    return total / period_s
+def _each(of: Callable[[Stretch], Functions]) -> tuple[Waveform, Waveform, Waveform]:
+    return (
+        lambda stretch: of(stretch)[0],
+        lambda stretch: of(stretch)[1],
+        lambda stretch: of(stretch)[2],
+    )
 
 
-def mean_square(stretches: Iterable[Stretch], waveform: Waveform, period_s: float) -> float:
-    """Average of the square over the period."""
-    total = 0.0
-    for stretch in stretches:
-        f = waveform(stretch)
-        if f is not None:
-            total += integral_of_square(f, stretch.gram)
+LINE_CURRENT = _each(lambda stretch: stretch.line)
+"""Of legs A, B, C."""
+BRANCH_CURRENT = _each(lambda stretch: stretch.branch)
+BRANCH_VOLTAGE = _each(lambda stretch: stretch.branch_voltage)
+LINE_VOLTAGE = _each(lambda stretch: stretch.line_voltage)
+"""AB, BC, CA."""
+
+
+LINK_CURRENT: Waveform = attrgetter("link")
+"""Out of the link's positive rail."""
+
+
+def mean(stretches: Sequence[Stretch], waveform: Waveform) -> float:
+    """Average over the stretches."""
+    total = sum(integral(waveform(stretch), stretch.gram[0]) for stretch in stretches)
+    return total / _length(stretches)
+
+
+def mean_square(stretches: Sequence[Stretch], waveform: Waveform) -> float:
+    """Average of the square over the stretches."""
+    total = sum(integral_of_square(waveform(stretch), stretch.gram) for stretch in stretches)
     # Rounding may leave a tiny negative sum where the quantity is zero.
-    return max(0.0, total) / period_s
+    return max(0.0, total / _length(stretches))
 
 
-def rms(stretches: Iterable[Stretch], waveform: Waveform, period_s: float) -> float:
-    """Root of the mean square over the period."""
-    return sqrt(mean_square(stretches, waveform, period_s))
+def _length(stretches: Sequence[Stretch]) -> float:
+    return sum(stretch.duration_s for stretch in stretches)
 
 
 def extremes(stretch: Stretch, f: Coefficients) -> tuple[float, float]:
     """Lowest and highest value over a stretch, interior extrema included."""
+    if not any(f[1:]):
+        return f[0], f[0]
     h = stretch.duration_s
     values = [f[0], value(f, stretch.rates, h)]
-    if any(f[1:]):
+    if len(f) > 2:  # a single exponential has no turn
         slope = derivative(f, stretch.rates)
         slack = 1e-13 * sum(abs(b) for b in f[1:])
-        turns = crossings(slope, stretch.rates, h, slack)
-        values += [value(f, stretch.rates, s) for s in turns]
+        values += [value(f, stretch.rates, s) for s in crossings(slope, stretch.rates, h, slack)]
     return min(values), max(values)
 
 
-def peak(stretches: Iterable[Stretch], waveform: Waveform) -> float:
-    """Largest absolute value in the period, both sides of every jump counted."""
+def peak(stretches: Sequence[Stretch], waveform: Waveform) -> float:
+    """Largest absolute value, both sides of every jump counted."""
     highest = 0.0
     for stretch in stretches:
-        f = waveform(stretch)
-        if f is not None:
-            low, high = extremes(stretch, f)
-            highest = max(highest, -low, high)
+        low, high = extremes(stretch, waveform(stretch))
+        highest = max(highest, -low, high)
     return highest
 
 
 def harmonic(
-    stretches: Iterable[Stretch], waveform: Waveform, period_s: float, order: int
+    half: Sequence[Stretch], waveform: Waveform, frequency_Hz: float, order: int
 ) -> complex:
-    """Complex amplitude of a harmonic: the quantity's part is Re(c e^{jnωt})."""
-    omega = 2.0 * pi * order / period_s
+    """Complex amplitude c of an odd harmonic, Re(c e^{jnωt}), from the first half period.
+
+    The second half repeats the first with the sign changed, so even orders are zero.
+    """
+    if order % 2 == 0:
+        return 0.0 + 0.0j
+    omega = 2.0 * pi * order * frequency_Hz
     total = 0.0 + 0.0j
-    for stretch in stretches:
+    for stretch in half:
         f = waveform(stretch)
-        if f is not None:
+        if any(f):
             total += fourier(f, stretch.rates, stretch.start_s, stretch.duration_s, omega)
-    return 2.0 * total / period_s
+    return 4.0 * total * frequency_Hz
 
 
 def total_harmonic_distortion(rms_value: float, fundamental_rms: float) -> float:

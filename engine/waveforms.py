@@ -11,7 +11,6 @@ from numpy.typing import NDArray
 from engine.bridge import LEG_OF_POSITION, POSITIONS, UPPER, Bridge
 from engine.conduction import Stretch, stretches_of
 from engine.gating import gate_on_s, gate_window_s
-from engine.pieces import star_point_voltage
 from engine.roots import Coefficients
 from engine.steady_state import SteadyState
 from engine.turn_off import freewheel_s, window_of
@@ -70,27 +69,31 @@ def sampled(state: SteadyState, points: int = 721) -> Waveforms:
     counts = [
         max(2, 1 + round(points * stretch.duration_s / bridge.period_s)) for stretch in stretches
     ]
-    parts = [_samples(stretch, count) for stretch, count in zip(stretches, counts, strict=True)]
-    columns = np.concatenate(parts, axis=1)
+    edges_deg = [360.0 * bridge.frequency_Hz * stretch.start_s for stretch in stretches]
+    edges_deg.append(360.0)
+    columns = np.concatenate(
+        [_samples(stretch, count) for stretch, count in zip(stretches, counts, strict=True)],
+        axis=1,
+    )
     owner = np.repeat(np.arange(len(stretches)), counts)
     freewheel = tuple(
-        freewheel_s(window_of(bridge, stretches, position)) * 360.0 * bridge.frequency_Hz
+        freewheel_s(window_of(state, position)) * 360.0 * bridge.frequency_Hz
         for position in range(6)
     )
     dead_deg = 360.0 * bridge.frequency_Hz * bridge.dead_interval_s
-    switch, diode = _device_currents(stretches, owner, columns[7:10])
+    switch, diode = _device_currents(stretches, owner, columns[6:9])
     return Waveforms(
-        angle_deg=columns[0],
+        angle_deg=_angles(edges_deg, counts),
         gate=_gates(stretches, owner),
-        phase_voltage_V=columns[1:4],
-        line_voltage_V=columns[4:7],
-        line_current_A=columns[7:10],
-        branch_current_A=columns[10:13],
-        link_current_A=columns[13],
+        phase_voltage_V=columns[0:3],
+        line_voltage_V=columns[3:6],
+        line_current_A=columns[6:9],
+        branch_current_A=columns[9:12],
+        link_current_A=columns[12],
         switch_current_A=switch,
         diode_current_A=diode,
-        position_voltage_V=_position_voltages(bridge, columns[14:17]),
-        conduction=_conduction(bridge, stretches),
+        position_voltage_V=_position_voltages(bridge, columns[13:16]),
+        conduction=_conduction(stretches, edges_deg),
         gate_on_deg=tuple(_gate_edge_deg(bridge, position, 0.0) for position in range(6)),
         gate_off_deg=tuple(
             _gate_edge_deg(bridge, position, gate_window_s(bridge)) for position in range(6)
@@ -100,36 +103,34 @@ def sampled(state: SteadyState, points: int = 721) -> Waveforms:
     )
 
 
+def _angles(edges_deg: list[float], counts: list[int]) -> Array:
+    """Evenly spaced angles of every stretch, both its ends included: (n,)."""
+    parts = (
+        np.linspace(start, end, count)
+        for (start, end), count in zip(pairwise(edges_deg), counts, strict=True)
+    )
+    return np.concatenate(list(parts))
+
+
 def _samples(stretch: Stretch, count: int) -> Array:
-    """Angle, then 16 rows of voltages and currents, over one stretch: (17, count)."""
-    bridge = stretch.piece.bridge
+    """16 rows of voltages and currents over one stretch: (16, count)."""
     s = np.linspace(0.0, stretch.duration_s, count)
     basis = np.ones((1 + len(stretch.rates), count))
     for row, rate in enumerate(stretch.rates, start=1):
         basis[row] = np.expm1(rate * s) / rate if rate else s
-    rows = np.array(_quantities(stretch))
-    angles = 360.0 * bridge.frequency_Hz * (stretch.start_s + s)
-    return np.vstack([angles[None, :], rows @ basis])
+    return np.array(_quantities(stretch)) @ basis
 
 
 def _quantities(stretch: Stretch) -> list[Coefficients]:
     """Coefficients of what is drawn, in the order of the rows."""
-    piece = stretch.piece
-    a, b, c = stretch.terminal
-    lines = [_difference(a, b), _difference(b, c), _difference(c, a)]
-    if piece.bridge.connection == "star":
-        star_point = star_point_voltage(piece)
-        phases = [_difference(terminal, star_point) for terminal in (a, b, c)]
-    else:
-        phases = lines
-    currents = [piece.branch_current(branch) for branch in range(3)]
-    upper = [stretch.line[leg] for leg in range(3) if piece.legs[leg] > 0]
-    link = tuple(map(sum, zip(*upper, strict=True))) if upper else (0.0,) * len(a)
-    return [*phases, *lines, *stretch.line, *currents, link, a, b, c]
-
-
-def _difference(a: Coefficients, b: Coefficients) -> Coefficients:
-    return tuple(x - y for x, y in zip(a, b, strict=True))
+    return [
+        *stretch.branch_voltage,
+        *stretch.line_voltage,
+        *stretch.line,
+        *stretch.branch,
+        stretch.link,
+        *stretch.terminal,
+    ]
 
 
 def _device_currents(
@@ -166,11 +167,10 @@ def _gate_edge_deg(bridge: Bridge, position: int, later_s: float) -> float:
     return 360.0 * ((gate_on_s(bridge, position) + later_s) % period_s) / period_s
 
 
-def _conduction(bridge: Bridge, stretches: tuple[Stretch, ...]) -> tuple[Conduction, ...]:
+def _conduction(stretches: tuple[Stretch, ...], edges_deg: list[float]) -> tuple[Conduction, ...]:
     """Conducting devices over the period, neighbours with the same devices made one."""
-    starts = [360.0 * bridge.frequency_Hz * stretch.start_s for stretch in stretches]
     found: list[Conduction] = []
-    for stretch, (start, end) in zip(stretches, pairwise([*starts, 360.0]), strict=True):
+    for stretch, (start, end) in zip(stretches, pairwise(edges_deg), strict=True):
         names = _device_names(stretch)
         if found and found[-1].devices == names:
             found[-1] = Conduction(found[-1].start_deg, end, names)

@@ -55,6 +55,7 @@ class Candidates(Page):
         self.detail = CellDetail(self.sheets.sheets)
         self.missing = MissingLine()
         self._picture: Picture | None = None
+        self._needs: tuple[str, ...] = ()
         self._named = -1
         self._starts_sheet = False
         self.name_entry = NameEntry(self.sheets, self._name_fault)
@@ -140,7 +141,7 @@ class Candidates(Page):
     def show_picture(self, picture: Picture) -> None:
         from engine.rule_sets import rule_set_of
 
-        self._picture = picture
+        self._picture, self._needs = picture, ()
         results = picture.assessment.candidates
         self.sheets.show_picture(picture)
         tight_pct = rule_set_of(picture.selection).tight_band_pct
@@ -156,7 +157,7 @@ class Candidates(Page):
         self._on_cell()
 
     def show_incomplete(self, missing: tuple[str, ...]) -> None:
-        self._picture = None
+        self._picture, self._needs = None, missing
         self.sheets.show_incomplete()
         self.plot.show_results((), "", 0.0)
         self.wanted.show_wanted(())
@@ -224,7 +225,9 @@ class Candidates(Page):
         column = index.column()
         self.plot.set_current(column)
         candidates = self.sheets.sheets.candidates
-        if 0 <= column < len(candidates):
+        if self._needs:
+            self.missing.show_needs(self._needs)
+        elif 0 <= column < len(candidates):
             result = None if self.sheets.sheets.stale else self.sheets.sheets.result(column)
             self.missing.show_missing(column, candidates[column], result)
         else:

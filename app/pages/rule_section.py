@@ -6,14 +6,15 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 import msgspec
-from PySide6.QtCore import Qt
+from PySide6.QtCore import Qt, Signal
+from PySide6.QtGui import QKeyEvent, QPainter, QPaintEvent
 from PySide6.QtWidgets import QMenu, QPushButton, QToolButton, QWidget
 
 from app.open_selection import OpenSelection
 from app.pages.entry_section import EntrySection
 from app.theme import AXIS, TABLE, font
 from app.widgets.entry_row import EntryRow, Widths, indented, set_role
-from app.widgets.number_entry import HOW_TO_CONFIRM, NumberEntry
+from app.widgets.number_entry import HOW_TO_CONFIRM, NumberEntry, underline_assumed
 from app.widgets.restyle import restyle
 from engine.duty import value_of
 from engine.rule_sets import BUILT_IN, RuleSet
@@ -118,6 +119,42 @@ class FigureRow(EntryRow):
         field.setFixedSize(widths.field, widths.row - 4)
 
 
+class RuleSetButton(QToolButton):
+    """Names the rule set and opens the list of them; Ctrl+Enter confirms an assumed one."""
+
+    confirmed = Signal()
+
+    def __init__(self) -> None:
+        super().__init__()
+        self._assumed = False
+        self.setProperty("choice", True)
+        self.setFont(font(TABLE))
+        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
+        self.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
+
+    def show_choice(self, name: str, assumed: bool, note: str) -> None:
+        self._assumed = assumed
+        self.setText(f"{name} ▾")
+        self.setAccessibleName(f"Rule set: {name}")
+        self.setToolTip(HOW_TO_CONFIRM if assumed else note)
+        restyle(self, "assumed", assumed)
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:
+        enter = event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter)
+        if enter and event.modifiers() & Qt.KeyboardModifier.ControlModifier:
+            if self._assumed:
+                self.confirmed.emit()
+        else:
+            super().keyPressEvent(event)
+
+    def paintEvent(self, event: QPaintEvent) -> None:
+        super().paintEvent(event)
+        if self._assumed:
+            half, middle = self.fontMetrics().horizontalAdvance(self.text()) // 2, self.width() // 2
+            painter = QPainter(self)
+            underline_assumed(painter, middle - half, middle + half, self.height() // 2 + 8)
+
+
 class RuleSection(EntrySection):
     """The figures stand there once they are asked for, or when one of them is changed."""
 
@@ -140,25 +177,21 @@ class RuleSection(EntrySection):
         value = value_of(self.document.selection, KEY)
         return value if isinstance(value, RuleSetChange) else RuleSetChange(based_on=value)
 
-    def _make_choice(self) -> QToolButton:
-        button = QToolButton()
-        button.setProperty("choice", True)
-        button.setFont(font(TABLE))
-        button.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
-        button.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
+    def _make_choice(self) -> RuleSetButton:
+        button = RuleSetButton()
         menu = QMenu(button)
         for name in BUILT_IN:
             menu.addAction(name, lambda name=name: self.enter(KEY, name))
         button.setMenu(menu)
+        button.confirmed.connect(lambda: self.enter(KEY, self._change.based_on))
         return button
 
     def refresh(self) -> None:
         change = self._change
         assumed = self.document.selection.rule_set is None
         count = _count(change)
-        self._choice.setText(change.based_on + (f", {count} changed" if count else "") + " ▾")
-        self._choice.setAccessibleName(f"Rule set: {self._choice.text()}")
-        self._choice.setToolTip(HOW_TO_CONFIRM if assumed else self._note(change.based_on))
+        name = change.based_on + (f", {count} changed" if count else "")
+        self._choice.show_choice(name, assumed, self._note(change.based_on))
         if change.based_on != self._base:
             self._rebuild(change.based_on)
         for figure, row in self._figures.items():

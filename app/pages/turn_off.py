@@ -19,7 +19,7 @@ from app.turn_off_view import lanes_of, position_rows, sentences, worst_position
 from app.verdict_sentence import corner_in_words
 from app.widgets.check_rows import CheckRows, turn_off_rows
 from app.widgets.choice_entry import ChoiceEntry
-from app.widgets.entry_row import NARROW, WIDE
+from app.widgets.entry_row import NARROW, WIDE, set_role
 from app.widgets.time_bar import TimeBar
 from app.widgets.turn_off_table import TurnOffTable
 from app.widgets.window_width import WindowWidth
@@ -45,6 +45,7 @@ class TurnOff(Page):
         self._said = QLabel(wordWrap=True)
         self._place = _second()
         self._picture: Picture | None = None
+        self._position = document.looked_at.position
         self._lay_out()
         self._connect()
         self.gating.refresh()
@@ -70,6 +71,7 @@ class TurnOff(Page):
     def show_stale(self, problems: tuple[Problem, ...]) -> None:
         self.gating.show_faults({problem.key: problem.text for problem in problems})
         self._place.setText("stale")
+        set_role(self._said, "second")
         for part in (self.bar, self.table, self.rows):
             part.show_stale()
 
@@ -78,6 +80,7 @@ class TurnOff(Page):
         self.bar.show_lanes(())
         self.table.fill(())
         self.rows.show_rows(())
+        self._rows_head.hide()
         names = ", ".join(name_of(key) for key in missing)
         self._said.setText(f"Needs {names}." if names else "Computing …")
         self._place.clear()
@@ -89,10 +92,11 @@ class TurnOff(Page):
         self.bar.show_lanes(lanes_of(picture, self.position))
         self.table.show_rows(position_rows(picture), self.position)
         self._said.setText(" ".join(sentences(picture, self.position)))
-        nominal = "" if picture.looked_at.is_nominal else ", not nominal"
-        self._place.setText(
-            f"{POSITIONS[self.position]} at {corner_in_words(picture.corner)}{nominal}"
-        )
+        set_role(self._said, "")
+        off = "" if picture.looked_at.is_nominal else ", not nominal"
+        point = f"{POSITIONS[self.position]} at {corner_in_words(picture.corner)}{off}"
+        judged = "; verdicts at their worst corner" if picture.assessment.candidates else ""
+        self._place.setText(point + judged)
 
     # Choices ----------------------------------------------------------------------------
 
@@ -103,9 +107,10 @@ class TurnOff(Page):
             self.document.looked_at = replace(self.document.looked_at, position=position)
 
     def _on_looked_at(self) -> None:
-        """Follow a position that was chosen elsewhere."""
-        if self.document.looked_at.position != self.position:
-            self._choose(self.document.looked_at.position)
+        """Follow a position that was chosen elsewhere; another point keeps the choice."""
+        before, self._position = self._position, self.document.looked_at.position
+        if self._position != before and self._position != self.position:
+            self._choose(self._position)
 
     def _on_opened(self) -> None:
         self.gating.discard_typing()

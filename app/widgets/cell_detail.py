@@ -11,8 +11,8 @@ from app.widgets.sheet_model import Index, SheetModel
 from app.widgets.sheet_rows import Cell, SheetRow
 from engine.checks import Check
 
-HEIGHT = 76
-LINES = 3
+LINES, LINE = 4, 14
+HEIGHT = 34 + LINES * LINE
 HINT = "keys: M maximum, T typical, C read from curve, A assumed"
 
 
@@ -25,7 +25,9 @@ class CellDetail(QWidget):
         self.setFixedHeight(HEIGHT)
         self._head = QLabel()
         self._head.setFont(font(BODY, bold=True))
-        self._lines = QLabel(wordWrap=False)
+        self._lines = QLabel(wordWrap=True)
+        self._lines.setFixedHeight(LINES * LINE)
+        self._lines.setAlignment(Qt.AlignmentFlag.AlignTop)
         self._lines.setFont(font(AXIS))
         self._lines.setProperty("role", "second")
         self._lines.setTextInteractionFlags(Qt.TextInteractionFlag.TextSelectableByMouse)
@@ -43,7 +45,9 @@ class CellDetail(QWidget):
             self._lines.clear()
             return
         self._head.setText(self._title(cell, self._model.rows[index.row()]))
-        self._lines.setText("\n".join(self._text(index, cell)[:LINES]))
+        text = "\n".join(self._text(index, cell))
+        self._lines.setText(text)
+        self._lines.setToolTip(text)
 
     def say(self, sentence: str) -> None:
         """Say why the last thing asked for could not be done."""
@@ -59,9 +63,8 @@ class CellDetail(QWidget):
     def _text(self, index: Index, cell: Cell) -> list[str]:
         fault = self._model.fault(index)
         lines = [fault] if fault else []
-        if not self._model.stale:
-            lines += [_law(check) for check in cell.checks]
-        return [*lines, _basis(cell)]
+        laws = [] if self._model.stale else [_law(check) for check in cell.checks]
+        return [line for line in dict.fromkeys([*lines, _basis(cell), *laws]) if line]
 
 
 def _law(check: Check) -> str:

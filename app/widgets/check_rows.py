@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 
 from PySide6.QtCore import QRectF, Qt
-from PySide6.QtGui import QFontMetrics, QPainter, QPaintEvent
+from PySide6.QtGui import QFontMetrics, QFontMetricsF, QPainter, QPaintEvent, QResizeEvent
 from PySide6.QtWidgets import QSizePolicy, QWidget
 
 from app.theme import AXIS, BODY, TABLE, font, theme
@@ -15,9 +15,10 @@ from app.widgets.sheet_delegate import headroom_text
 from app.widgets.verdict_mark import SIZE, draw_verdict_mark
 from engine.checks import CandidateResult, Check
 
-HEAD, LINE, ROW, GAP = 28, 18, 40, 12
+HEAD, LINE, GAP = 28, 18, 12
 LEFT = Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignVCenter
 RIGHT = Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter
+WRAPPED = Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop | Qt.TextFlag.TextWordWrap
 
 NAMES = {
     "tq_dead": "dead interval against t_q",
@@ -68,9 +69,29 @@ class CheckRows(QWidget):
 
     def show_rows(self, blocks: Sequence[CandidateRows]) -> None:
         self._blocks, self._stale = tuple(blocks), False
-        self.setFixedHeight(sum(HEAD + ROW * len(b.checks) + GAP for b in blocks) or 1)
+        self._fit()
         self.setAccessibleDescription(self.as_text())
         self.update()
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        super().resizeEvent(event)
+        self._fit()
+
+    def _fit(self) -> None:
+        rows = sum(self._row_height(check) for block in self._blocks for check in block.checks)
+        self.setFixedHeight(int(rows + len(self._blocks) * (HEAD + GAP)) or 1)
+
+    def _row_height(self, check: Check) -> float:
+        return LINE + self._law_room(0.0, check).height() + 6.0
+
+    def _law_room(self, top: float, check: Check) -> QRectF:
+        """The room of the law, wrapped to the width there is."""
+        left = COLUMNS[0][0]
+        width = max(self.width() - left - 8, 200)
+        wrapped = QFontMetricsF(font(AXIS)).boundingRect(
+            QRectF(0, 0, width, 1000), WRAPPED, law_of(check)
+        )
+        return QRectF(left, top, width, wrapped.height())
 
     def show_stale(self) -> None:
         self._stale = True
@@ -95,7 +116,7 @@ class CheckRows(QWidget):
             top += HEAD
             for check in block.checks:
                 self._row(painter, top, check)
-                top += ROW
+                top += self._row_height(check)
             top += GAP
 
     def _head(self, painter: QPainter, top: float, block: CandidateRows) -> None:
@@ -124,11 +145,7 @@ class CheckRows(QWidget):
     def _law(self, painter: QPainter, top: float, check: Check) -> None:
         painter.setPen(theme().stale if self._stale else theme().second_ink)
         painter.setFont(font(AXIS))
-        room = QRectF(COLUMNS[0][0], top, self.width() - COLUMNS[0][0], LINE)
-        text = QFontMetrics(painter.font()).elidedText(
-            law_of(check), Qt.TextElideMode.ElideRight, int(room.width())
-        )
-        painter.drawText(room, LEFT, text)
+        painter.drawText(self._law_room(top, check), WRAPPED, law_of(check))
 
 
 def law_of(check: Check) -> str:

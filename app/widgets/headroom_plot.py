@@ -17,10 +17,10 @@ from engine.checks import CandidateResult, Check
 
 HEAD = 44
 ROW = 20
-LABELS = 92
+LABELS = 108
 RANGE_PCT = (-50.0, 100.0)
 """What lies beyond stands at the edge, with an arrow."""
-TICKS_PCT = (-50, 0, 50, 100)
+TICKS_PCT, FEW_TICKS_PCT = (-50, 0, 50, 100), (0, 100)
 MARK = 15.0
 """Width of a numbered mark; those that would lie on each other stand side by side."""
 NUMBERED = 4
@@ -31,7 +31,7 @@ TICK = 3.0
 Mark = tuple[int, Check, QRectF]
 """Candidate, check, and the room of its mark."""
 
-_SECOND_ROWS = {"V_steady": "dc", "tq_commutation": "circuit", "turn_off_current": "off"}
+_SECOND_ROWS = {"tq_commutation": "circuit", "turn_off_current": "off"}
 """What tells two rows of one rating apart."""
 
 
@@ -164,17 +164,16 @@ class HeadroomPlot(QWidget):
 
     def _axis(self, painter: QPainter) -> None:
         look, bottom = theme(), HEAD + ROW * len(self._rows)
+        title = f"Headroom %, worst first{', stale' if self._stale else ''}"
         painter.setFont(font(TABLE, bold=True))
         painter.setPen(look.ink)
-        painter.drawText(
-            QRectF(8, 0, self.width() - 16, 22), LEFT | MIDDLE, "Headroom %, worst first"
-        )
+        painter.drawText(QRectF(8, 0, self.width() - 16, 22), LEFT | MIDDLE, title)
         if not self._rows:
             return
         tight = QRectF(self._x(0), HEAD, self._x(self._tight_pct) - self._x(0), bottom - HEAD)
         painter.fillRect(tight, look.shade)
         painter.setFont(font(AXIS))
-        for tick in TICKS_PCT:
+        for tick in TICKS_PCT if self.width() > 260 else FEW_TICKS_PCT:
             painter.setPen(look.second_ink)
             room = QRectF(self._x(tick) - 24, 22, 48, HEAD - 24)
             painter.drawText(room, Qt.AlignmentFlag.AlignCenter, str(tick).replace("-", "−"))

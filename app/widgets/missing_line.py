@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from functools import partial
 
 from PySide6.QtCore import Qt, Signal
@@ -47,6 +48,17 @@ class MissingLine(QWidget):
                 self._say(f"and {len(waits) - SHOWN} more")
         self._row.addStretch(1)
 
+    def show_needs(self, missing: Sequence[str]) -> None:
+        """What the duty lacks before anything can be assessed."""
+        if tuple(missing) == self._shown:
+            return
+        self.clear()
+        self._shown = tuple(missing)
+        self._say("Not assessed: needs")
+        for key in missing:
+            self._link(key, name_of(key), f"{name_of(key)}, missing: go there")
+        self._row.addStretch(1)
+
     def clear(self) -> None:
         self._shown = None
         while (item := self._row.takeAt(0)) is not None:
@@ -62,11 +74,16 @@ class MissingLine(QWidget):
     def _offer(self, column: int, candidate: Candidate, key: str, rows: int) -> None:
         own = key.startswith(("switch.", "diode."))
         name = symbol_of(candidate, key) if own else name_of(key)
-        button = QPushButton(f"{name} ({rows} row{'s' if rows > 1 else ''})", flat=True)
-        button.setCursor(Qt.CursorShape.PointingHandCursor)
-        button.setAccessibleName(f"{name}, missing, settles {rows} rows: go there")
+        counted = f"{rows} row{'s' if rows > 1 else ''}"
         whole_key = f"candidates.{column}.{key}" if own else key
-        button.clicked.connect(partial(self._ask, whole_key))
+        said = f"{name}, missing, settles {counted}: go there"
+        self._link(whole_key, f"{name} ({counted})", said)
+
+    def _link(self, key: str, text: str, said: str) -> None:
+        button = QPushButton(text, flat=True)
+        button.setCursor(Qt.CursorShape.PointingHandCursor)
+        button.setAccessibleName(said)
+        button.clicked.connect(partial(self._ask, key))
         self._row.addWidget(button)
 
     def _ask(self, key: str, *_: object) -> None:

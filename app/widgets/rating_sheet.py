@@ -10,7 +10,6 @@ from app.open_selection import OpenSelection
 from app.picture import Picture
 from app.theme import theme_signals
 from app.widgets.fault_note import FaultNote
-from app.widgets.number_entry import NumberEntry
 from app.widgets.sheet_delegate import LAYOUT, SheetDelegate
 from app.widgets.sheet_headers import (
     HEAD_HEIGHT,
@@ -72,7 +71,7 @@ class RatingSheets(QTableView):
         self._delegate = SheetDelegate(self.sheets, self)
         self._delegate.down.connect(self.step_down)
         self._delegate.across.connect(self.step_across)
-        self._delegate.fault_at_field.connect(self._show_fault)
+        self._delegate.fault_at_field.connect(self._fault.show_at)
         self.setModel(self.sheets)
         self.setItemDelegate(self._delegate)
         self.setShowGrid(False)
@@ -277,11 +276,6 @@ class RatingSheets(QTableView):
         self.head.chosen = self._document.selection.chosen
         self._fit_columns()
         self.head.viewport().update()
-
-    def _show_fault(self, sentence: str) -> None:
-        field = self.viewport().findChild(NumberEntry)
-        if field is not None:
-            self._fault.show_at(field, sentence)
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         super().resizeEvent(event)

@@ -33,7 +33,7 @@ class CellLayout:
 
     value: int = 56
     basis: int = 60
-    applied: int = 136
+    applied: int = 130
     headroom: int = 170
     mark: int = 176
     word: int = 193
@@ -60,6 +60,12 @@ class SheetEntry(NumberEntry):
             scale=10.0**rating.exponent,
         )
         self.moves_on = False
+        self.is_new = True
+
+    def type_again(self, text: str) -> None:
+        """Go on with a text that could not be used when the field was left."""
+        self.setText(text)
+        self.textEdited.emit(text)
 
     def focusInEvent(self, event: QFocusEvent) -> None:
         super().focusInEvent(event)
@@ -71,7 +77,7 @@ class SheetDelegate(QStyledItemDelegate):
 
     down = Signal()
     across = Signal(int)
-    fault_at_field = Signal(str)
+    fault_at_field = Signal(QWidget, str)
 
     def __init__(self, model: SheetModel, parent: QObject) -> None:
         super().__init__(parent)
@@ -98,7 +104,7 @@ class SheetDelegate(QStyledItemDelegate):
         entry = SheetEntry(self._model.key(index), rating, parent)
         entry.entered.connect(lambda value: self._model.enter(index, value))
         entry.refused.connect(lambda text: self._model.refuse(index, entry.text(), text))
-        entry.fault_shown.connect(self.fault_at_field)
+        entry.fault_shown.connect(lambda text: self.fault_at_field.emit(entry, text))
         return entry
 
     def setEditorData(self, editor: QWidget, index: Index) -> None:
@@ -106,6 +112,9 @@ class SheetDelegate(QStyledItemDelegate):
         if isinstance(editor, SheetEntry):
             value = cell.value if isinstance(cell.value, float) else None
             editor.set_value(value, cell.assumed)
+            if editor.is_new and self._model.fault(index):
+                editor.type_again(self._model.text(index))
+            editor.is_new = False
         elif isinstance(editor, QLineEdit) and editor.text() != (cell.value or ""):
             editor.setText(str(cell.value or ""))
 
@@ -265,5 +274,7 @@ class SheetDelegate(QStyledItemDelegate):
 
 def headroom_text(headroom_pct: float) -> str:
     """'34', '1.1', '−10': one decimal where it matters, a true minus; never a negative zero."""
+    if headroom_pct < -999.0:
+        return "<−999"
     text = f"{headroom_pct:.1f}" if abs(headroom_pct) < 10.0 else f"{headroom_pct:.0f}"
-    return "< 0" if text == "-0.0" else text.replace("-", "−")
+    return "<0" if text == "-0.0" else text.replace("-", "−")

@@ -16,7 +16,7 @@ from app.widgets.verdict_mark import SIZE, draw_verdict_mark
 from engine.checks import CandidateResult
 
 HEAD_HEIGHT = 92
-SYMBOL_WIDTH, NARROW_SYMBOL_WIDTH = 160, 140
+SYMBOL_WIDTH, NARROW_SYMBOL_WIDTH = 160, 128
 LINES = (8, 28, 48)
 """Tops of the name, the verdict and its worst check; the captions stand at the bottom."""
 LINE_HEIGHT = 18

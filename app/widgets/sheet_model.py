@@ -8,7 +8,9 @@ import msgspec
 from PySide6.QtCore import QAbstractTableModel, QModelIndex, QPersistentModelIndex, Qt
 
 from app.open_selection import OpenSelection
+from app.pages.check_pages import deciding_check
 from app.picture import Picture
+from app.verdict_sentence import sentence_of
 from app.widgets.sheet_rows import (
     KIND_NAMES,
     SECTION_NAMES,
@@ -41,10 +43,12 @@ class SheetModel(QAbstractTableModel):
         self._unfolded: frozenset[Section] = frozenset()
         self._results: dict[str, CandidateResult] = {}
         self._refused: dict[str, str] = {}
+        self._cells: dict[tuple[int, int], Cell] = {}
         self.stale = False
         self.rows: list[SheetRow] = []
         self.candidates: tuple[Candidate, ...] = ()
         document.changed.connect(self._on_document)
+        document.opened.connect(self._forget_refused)
         document.refusals_changed.connect(self._repaint)
         self._on_document()
 
@@ -70,20 +74,47 @@ class SheetModel(QAbstractTableModel):
     def headerData(
         self, section: int, orientation: Qt.Orientation, role: int = Qt.ItemDataRole.DisplayRole
     ) -> Any:
+        tells = role in (Qt.ItemDataRole.ToolTipRole, Qt.ItemDataRole.AccessibleTextRole)
+        across = orientation == Qt.Orientation.Horizontal
+        if tells:
+            return self.candidate_sentence(section) if across else self._row_sentence(section)
         if role != Qt.ItemDataRole.DisplayRole:
             return None
-        if orientation == Qt.Orientation.Horizontal:
-            return self.candidates[section].name
-        row = self.rows[section]
+        return self.candidates[section].name if across else self._row_name(section)
+
+    def _row_name(self, number: int) -> str:
+        row = self.rows[number]
         if row.rating is not None:
             return f"{row.rating.symbol} {row.rating.sheet_unit}".strip()
         return "note" if row.form == "note" else SECTION_NAMES[row.section]
 
+    def _row_sentence(self, number: int) -> str:
+        rating = self.rows[number].rating
+        return self._row_name(number) if rating is None else f"{rating.symbol}, {rating.name}"
+
+    def candidate_sentence(self, column: int) -> str:
+        """A candidate's verdict and what decides it, in words."""
+        name, result = self.candidates[column].name, self.result(column)
+        if result is None:
+            return name
+        if self.stale:
+            return f"{name}: stale"
+        decides = deciding_check(result)
+        said = sentence_of(decides) if decides is not None else ""
+        return "\n".join(
+            part for part in (f"{name}: {result.verdict}", result.remark, said) if part
+        )
+
     # What the cells hold ----------------------------------------------------------------
 
     def cell(self, index: Index) -> Cell:
-        candidate = self.candidates[index.column()]
-        return cell_of(candidate, self.rows[index.row()], self._results.get(candidate.name))
+        """What stands in a cell, worked out once between two changes: painting asks often."""
+        place = index.row(), index.column()
+        if place not in self._cells:
+            candidate = self.candidates[place[1]]
+            result = self._results.get(candidate.name)
+            self._cells[place] = cell_of(candidate, self.rows[place[0]], result)
+        return self._cells[place]
 
     def key(self, index: Index) -> str:
         """The dotted key of a cell's entry in the document."""
@@ -240,18 +271,23 @@ class SheetModel(QAbstractTableModel):
             self._repaint()
         else:
             self._lay_out()
+            self._forget_refused()
+
+    def _forget_refused(self) -> None:
+        """A key holds the place of a candidate, which may be another's now."""
+        keys, self._refused = [*self._refused], {}
+        for key in keys:
+            self._document.refuse_entry(key, "")
 
     def _lay_out(self) -> None:
         self.beginResetModel()
         self.candidates = self._document.selection.candidates
         self.rows = sheet_rows(self.candidates, self._unfolded)
+        self._cells.clear()
         self.endResetModel()
-        # Keys hold the place of a candidate, which may be another's now.
-        for key in [*self._refused]:
-            del self._refused[key]
-            self._document.refuse_entry(key, "")
 
     def _repaint(self) -> None:
+        self._cells.clear()
         if self.rows and self.candidates:
             last = self.index(len(self.rows) - 1, len(self.candidates) - 1)
             self.dataChanged.emit(self.index(0, 0), last)

@@ -48,7 +48,7 @@ class Cell:
     assumed: bool = False
     basis: Basis = "maximum"
     checks: tuple[Check, ...] = ()
-    """Every verdict row that compares this rating, worst first."""
+    """Every verdict row that compares this rating, as `checks_of` orders them."""
     missing: bool = False
     """Whether a figure is lacking that a verdict needs."""
 
@@ -127,9 +127,13 @@ def _is_wanted(section: Section, rating: Rating, result: CandidateResult | None)
 
 
 def checks_of(result: CandidateResult, section: Section, rating: Rating) -> tuple[Check, ...]:
-    """The verdict rows that compare a rating, worst first."""
+    """The verdict rows that compare a rating, worst first, those not assessed last.
+
+    A row that still waits for its circuit does not hide what the others come to.
+    """
     ids = {f"{section}.{check}" for check in rating.checks}
-    return tuple(sorted((c for c in result.checks if c.id in ids), key=severity))
+    found = (check for check in result.checks if check.id in ids)
+    return tuple(sorted(found, key=lambda c: (c.verdict == "not assessed", severity(c))))
 
 
 def severity(check: Check) -> tuple[int, float]:

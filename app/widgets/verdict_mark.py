@@ -9,7 +9,7 @@ from PySide6.QtCore import QRectF, QSize
 from PySide6.QtGui import QPainter, QPaintEvent
 from PySide6.QtWidgets import QSizePolicy, QWidget
 
-from app.theme import theme
+from app.theme import Theme, theme
 from engine.checks import Verdict
 
 SIZE = 14
@@ -29,12 +29,17 @@ _PARTS: dict[Verdict, tuple[tuple[float, float, float, float], ...]] = {
 """x, y, width, height of the filled parts, in units of the grid."""
 
 
-def draw_verdict_mark(painter: QPainter, rect: QRectF, verdict: Verdict | None) -> None:
-    """Fill the mark into a square at the rect's top left; nothing for `None` (stale)."""
+def draw_verdict_mark(
+    painter: QPainter, rect: QRectF, verdict: Verdict | None, look: Theme | None = None
+) -> None:
+    """Fill the mark into a square at the rect's top left; nothing for `None` (stale).
+
+    `look` is another theme than the window's: paper is always light.
+    """
     if verdict is None:
         return
     scale = min(rect.width(), rect.height()) / SIZE
-    colour = theme().verdict[verdict]
+    colour = (look or theme()).verdict[verdict]
     for x, y, width, height in _PARTS[verdict]:
         part = QRectF(x * scale, y * scale, width * scale, height * scale)
         painter.fillRect(part.translated(rect.topLeft()), colour)

@@ -15,20 +15,23 @@ ROW_HEIGHT, GAP = 26, 24
 
 def wanted_rating(wanted: Wanted) -> Rating | None:
     """The line of a data sheet that a wanted row speaks of."""
-    part, _, stem = wanted.id.partition(".")
-    sheets = (DIODE,) if part == "diode" else (THYRISTOR, IGBT)
-    return next((r for sheet in sheets for r in sheet if stem in r.checks), None)
+    sheets = (DIODE,) if wanted.id.startswith("diode.") else (THYRISTOR, IGBT)
+    return next((rating for sheet in sheets for rating in _of(wanted, sheet)), None)
 
 
 def wanted_device(wanted: Wanted) -> str:
     """'thyristor', 'IGBT', 'switch' where both have that rating, or 'diode'."""
-    part, _, stem = wanted.id.partition(".")
-    if part == "diode":
+    if wanted.id.startswith("diode."):
         return "diode"
-    of_thyristor, of_igbt = (any(stem in r.checks for r in sheet) for sheet in (THYRISTOR, IGBT))
+    of_thyristor, of_igbt = _of(wanted, THYRISTOR), _of(wanted, IGBT)
     if of_thyristor and of_igbt:
         return "switch"
     return "thyristor" if of_thyristor else "IGBT"
+
+
+def _of(wanted: Wanted, sheet: Sequence[Rating]) -> list[Rating]:
+    stem, symbol = wanted.id.partition(".")[2], wanted.rating.partition(",")[0]
+    return [each for each in sheet if stem in each.checks and each.symbol == symbol]
 
 
 class WantedTable(PlainTable):

@@ -147,6 +147,8 @@ def _average_by_loss(case: Case, row: Row, rated_form: float, wave: str) -> Find
     equal_A = equal_loss_average(V0, r, form, share * rated_W)
 
     def rating_for(target: float, place: Place) -> float | None:
+        if place.of(share) == 0.0:
+            return None
         own_A = target / fraction
         loss_W = (V0 * own_A + r * (place.of(form) * own_A) ** 2) / place.of(share)
         return equal_loss_average(V0, r, rated_form, loss_W)

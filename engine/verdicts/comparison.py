@@ -104,12 +104,12 @@ def _reason(comparison: Comparison, applied: float, allowed: float) -> str | Non
 
 
 def _would_do(comparison: Comparison, place: Place, adequate_share: float) -> float | None:
-    zero = comparison.zero
+    applied, zero = place.of(comparison.applied), comparison.zero
     if comparison.at_least:
         target = place.of(comparison.allowed) * adequate_share
     else:
-        target = zero + (place.of(comparison.applied) - zero) / adequate_share
-    if not np.isfinite(target) or target <= zero:
+        target = zero + (applied - zero) / adequate_share
+    if not np.isfinite(applied) or target <= zero:
         return None
     return comparison.rating_for(target, place)
 

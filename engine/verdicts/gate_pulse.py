@@ -13,6 +13,7 @@ import numpy as np
 from engine.bridge import POSITIONS
 from engine.latching import least_current_after, time_to_reach
 from engine.ratings import Thyristor
+from engine.selection import GatePulse
 from engine.steady_state import SteadyState
 from engine.stress_table import Array
 from engine.verdicts.case import Case
@@ -105,13 +106,13 @@ def holding(case: Case, row: Row) -> Finding:
 
 def _least_after_pulse(case: Case) -> Array:
     """Smallest current from the pulse's end to gate-off at the points of `states`, in A."""
-    pulse = case.solved.duty.pulse
-    table = case.solved.base
-    if pulse.width_s is None or pulse.form == "block":
+    pulse, table = case.solved.duty.pulse, case.solved.base
+    width_s = _pulse_width(pulse)
+    if np.isinf(width_s):
         return table.gate_off_A
     # Of a train, the pulse counts that meets the current's rise.
     begins_s = table.turn_on_delay_s if pulse.form == "train" else 0.0 * table.dead_interval_s
-    ends_s = begins_s + pulse.width_s
+    ends_s = begins_s + width_s
     least = _for_each(
         case,
         lambda state, point, position: least_current_after(
@@ -119,6 +120,11 @@ def _least_after_pulse(case: Case) -> Array:
         ),
     )
     return np.minimum(least, table.gate_off_A)
+
+
+def _pulse_width(pulse: GatePulse) -> float:
+    """Width of one pulse in s, ∞ for a block, which lasts as long as the window."""
+    return np.inf if pulse.form == "block" or pulse.width_s is None else pulse.width_s
 
 
 def gate_pulse(case: Case, row: Row) -> Finding:
@@ -132,15 +138,16 @@ def gate_pulse(case: Case, row: Row) -> Finding:
         needed_s = needed_s - table.turn_on_delay_s
     needed_s[np.isnan(table.turn_on_delay_s)] = np.nan
     window_s = duty.conduction_deg / 360.0 / points.frequency_Hz[:, None] - duty.blanking_s
-    there_s = window_s if duty.pulse.width_s is None else np.minimum(window_s, duty.pulse.width_s)
+    there_s = np.minimum(window_s, _pulse_width(duty.pulse))
 
     def how(place: Place) -> str:
-        delay_s = place.of(table.turn_on_delay_s)
-        start = "after the last rise" if is_train else "after gate-on"
+        delay_s, latched_s = place.of(table.turn_on_delay_s), place.of(needed_s)
+        start = "after that" if is_train else "after gate-on"
+        after = "never" if np.isinf(latched_s) else f"{quantity(latched_s, 's')} {start}"
         return (
             f"the current rises from zero {quantity(delay_s, 's')} after gate-on and reaches I_L "
-            f"{quantity(row.compared(case), 'A')} {quantity(place.of(needed_s), 's')} {start} "
-            f"{_drops_in_words(case)}; the pulse lasts {quantity(place.of(there_s), 's')}"
+            f"{quantity(row.compared(case), 'A')} {after} {_drops_in_words(case)}; "
+            f"the pulse lasts {quantity(place.of(there_s), 's')}"
         )
 
     return Comparison(

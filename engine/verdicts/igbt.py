@@ -96,6 +96,9 @@ def turn_off_current(case: Case, row: Row) -> Finding:
     return replace(
         found,
         allowed=np.where(peak_V <= V_CES, found.allowed, 0.0),
+        rating_for=lambda target, place: (
+            found.rating_for(target, place) if place.of(peak_V) <= V_CES else None
+        ),
         nothing_allowed="the peak voltage at turn-off is above V_CES",
     )
 

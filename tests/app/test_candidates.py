@@ -163,11 +163,47 @@ def test_a_text_that_is_no_rating_is_explained_at_the_field_and_changes_nothing(
     assert not desk.page.sheets._fault.isVisible()
 
 
+def test_a_text_left_behind_stays_with_its_fault_until_it_is_mended(desk: Desk) -> None:
+    desk.at(0, "V_DRM_V")
+    desk.type("12x")
+    left = desk.page.sheets.currentIndex()
+    desk.at(1, "tq_s")
+    assert desk.page.sheets.sheets.text(left) == "12x"
+    assert desk.document.refusals
+    desk.at(0, "V_DRM_V")
+    desk.press(Qt.Key.Key_F2)
+    desk.press(Qt.Key.Key_End)
+    desk.press(Qt.Key.Key_Backspace)
+    desk.press(ENTER)
+    assert not desk.document.refusals
+    assert desk.candidate().switch == Thyristor(V_DRM_V=12.0)
+
+
+def test_folding_keeps_a_fault_and_another_document_drops_it(desk: Desk) -> None:
+    desk.at(0, "V_DRM_V")
+    desk.type("12x")
+    desk.at(1, "tq_s")
+    desk.page.sheets.sheets.fold("switch")
+    assert desk.document.refusals
+    desk.document.open(SELECTION, None)
+    desk.at(0, "V_DRM_V")
+    assert desk.page.sheets.sheets.text(desk.page.sheets.currentIndex()) == ""
+
+
 def test_a_fault_does_not_outlive_its_candidate(desk: Desk) -> None:
     desk.at(0, "V_DRM_V")
     desk.type("12x")
     desk.page.remove.trigger()
     assert not desk.document.refusals
+
+
+def test_notes_are_typed_in_the_sheets_too(desk: Desk) -> None:
+    desk.at(0, "note", "candidate")
+    desk.enter("from the shelf")
+    desk.at(0, "part", "diode")
+    desk.enter("none yet")
+    assert desk.candidate().note == "from the shelf"
+    assert desk.candidate().diode.part == "none yet"
 
 
 # How sure -------------------------------------------------------------------------------
@@ -363,6 +399,14 @@ def test_without_candidates_the_wanted_ratings_are_shown(empty: Desk) -> None:
     assert table.texts(0)[1] == "V_DRM"
     assert table.texts(0)[3:5] == ["≥ 1188 V", "1200 V"]
     assert table.texts(2)[3] == "≤ 1200 µs"
+
+
+def test_an_incomplete_duty_is_named_above_the_sheets(desk: Desk) -> None:
+    desk.page.show_incomplete(("supply.voltage_V",))
+    (button,) = [w for w in desk.page.missing.children() if hasattr(w, "click")]
+    with desk.qtbot.waitSignal(desk.page.asked) as asked:
+        button.click()
+    assert asked.args == ["supply.voltage_V"]
 
 
 def test_an_incomplete_duty_says_what_it_needs(empty: Desk) -> None:

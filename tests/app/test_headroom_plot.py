@@ -3,10 +3,12 @@
 from __future__ import annotations
 
 import msgspec
+import pytest
 from PySide6.QtCore import Qt
 from pytestqt.qtbot import QtBot
 
 from app.widgets.headroom_plot import HeadroomPlot, headroom_rows
+from app.widgets.sheet_delegate import headroom_text
 from tests.app.assessments import BLOCKING, DEAD_INTERVAL, JUNCTION, WAITING, check, result
 
 FIRST = msgspec.structs.replace(result("undersized", BLOCKING, JUNCTION, WAITING), name="first")
@@ -22,6 +24,14 @@ def test_rows_come_worst_first_and_those_not_assessed_are_left_out() -> None:
 def test_a_row_that_fails_without_a_headroom_is_the_worst() -> None:
     runaway = check("diode.Tvj", "T_vj", "undersized", "C", reason="thermal runaway")
     assert headroom_rows([result("undersized", JUNCTION, runaway)])[0].id == "diode.Tvj"
+
+
+@pytest.mark.parametrize(
+    ("headroom_pct", "text"),
+    [(34.4, "34"), (1.14, "1.1"), (-10.2, "−10"), (-0.01, "<0"), (0.0, "0.0"), (-1e5, "<−999")],
+)
+def test_headroom_is_written_short(headroom_pct: float, text: str) -> None:
+    assert headroom_text(headroom_pct) == text
 
 
 def shown_plot(qtbot: QtBot, *results: object) -> HeadroomPlot:

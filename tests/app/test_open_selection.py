@@ -7,11 +7,17 @@ from pathlib import Path
 import pytest
 from hypothesis import settings
 from hypothesis import strategies as st
-from hypothesis.stateful import RuleBasedStateMachine, invariant, rule
+from hypothesis.stateful import (
+    RuleBasedStateMachine,
+    invariant,
+    rule,
+    run_state_machine_as_test,
+)
 from pytestqt.qtbot import QtBot
 
 from app.looked_at import LookedAt, corner_of, looked_at_corner
 from app.open_selection import OpenSelection
+from app.selection_file import selection_bytes, selection_from_bytes
 from engine.checks import Corner
 from engine.duty import duty_of
 from engine.ratings import Thyristor
@@ -177,14 +183,15 @@ def test_looking_at_a_row_takes_its_corner_and_position() -> None:
     assert looked_at_corner(corner).position == 0
 
 
-class EditsAndUndo(RuleBasedStateMachine):
-    """Against a plain list of snapshots: any mix of edits, undo and redo gives the same."""
+class EditsUndoAndSaves(RuleBasedStateMachine):
+    """Against a plain list of snapshots: any mix of edits, undo, redo and saves gives the same."""
 
     def __init__(self) -> None:
         super().__init__()
         self.document = OpenSelection()
         self.snapshots = [self.document.selection]
         self.at = 0
+        self.saved_at: int | None = 0
 
     @rule(value=st.floats(1.0, 1e4), key=st.sampled_from([VOLTAGE, FREQUENCY]))
     def edit(self, value: float, key: str) -> None:
@@ -192,6 +199,8 @@ class EditsAndUndo(RuleBasedStateMachine):
         if entry(self.document.selection, key) != value:
             self.snapshots[self.at + 1 :] = [with_entry(self.snapshots[self.at], key, value)]
             self.at += 1
+            if self.saved_at is not None and self.saved_at >= self.at:
+                self.saved_at = None
         self.document.set_entry(key, value, "Edit")
 
     @rule()
@@ -204,9 +213,18 @@ class EditsAndUndo(RuleBasedStateMachine):
         self.document.undo_stack.redo()
         self.at = min(self.at + 1, len(self.snapshots) - 1)
 
+    @rule()
+    def save(self) -> None:
+        data = selection_bytes(self.document.selection)
+        assert selection_from_bytes(data) == self.document.selection
+        assert selection_bytes(selection_from_bytes(data)) == data
+        self.document.saved_as(Path("a.json"))
+        self.saved_at = self.at
+
     @invariant()
     def the_document_is_the_snapshot(self) -> None:
         assert self.document.selection == self.snapshots[self.at]
+        assert self.document.undo_stack.isClean() == (self.at == self.saved_at)
 
     def teardown(self) -> None:
         while self.document.undo_stack.canUndo():
@@ -214,5 +232,13 @@ class EditsAndUndo(RuleBasedStateMachine):
         assert self.document.selection == new_selection()
 
 
-TestEditsAndUndo = EditsAndUndo.TestCase
-TestEditsAndUndo.settings = settings(max_examples=30, stateful_step_count=30, deadline=None)
+TestEditsUndoAndSaves = EditsUndoAndSaves.TestCase
+TestEditsUndoAndSaves.settings = settings(max_examples=30, stateful_step_count=30, deadline=None)
+
+
+@pytest.mark.long
+def test_two_thousand_random_sequences_end_at_the_exact_start(qtbot: QtBot) -> None:
+    run_state_machine_as_test(
+        EditsUndoAndSaves,
+        settings=settings(max_examples=2000, stateful_step_count=50, deadline=None),
+    )

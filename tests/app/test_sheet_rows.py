@@ -76,6 +76,23 @@ def test_a_cell_shows_the_worst_of_the_rows_that_compare_its_rating() -> None:
     assert found.checks == (steady, peak)
 
 
+def test_a_row_that_waits_for_its_circuit_does_not_hide_the_others() -> None:
+    rows = sheet_rows([THYRISTOR], frozenset())
+    dead = check("switch.tq_dead", "t_q", "adequate", headroom_pct=95.0)
+    circuit = check("switch.tq_commutation", "t_q", "not assessed")
+    found = cell_of(THYRISTOR, row(rows, "switch", "tq_s"), result("adequate", circuit, dead))
+    assert found.checks == (dead, circuit)
+
+
+def test_only_what_a_row_waits_for_is_missing_once_there_are_results() -> None:
+    rows = sheet_rows([THYRISTOR], frozenset())
+    waiting = result(
+        "adequate", check("switch.tq_dead", "t_q", "not assessed", needs=("switch.tq_s",))
+    )
+    assert cell_of(THYRISTOR, row(rows, "switch", "tq_s"), waiting).missing
+    assert not cell_of(THYRISTOR, row(rows, "switch", "V_RRM_V"), waiting).missing
+
+
 def test_the_figure_that_settles_most_rows_is_named_first() -> None:
     waiting = result(
         "not assessed",

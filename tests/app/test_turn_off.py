@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import Any
 
 import msgspec
@@ -100,6 +101,31 @@ def test_an_overrun_names_the_switch_that_has_to_wait() -> None:
     assert "until then T4 cannot take the current" in sentences(solved(LONG), 0)[1]
 
 
+def with_turn_off(picture_: Picture, **stress: Any) -> Picture:
+    """The picture with T1 turning off otherwise; the solver's loads here are all forced."""
+    first, *others = picture_.stress.positions
+    positions = (msgspec.structs.replace(first, **stress), *others)
+    changed = msgspec.structs.replace(picture_.stress, positions=positions)
+    return replace(picture_, stress=changed)
+
+
+def test_a_natural_turn_off_has_until_forward_voltage_returns() -> None:
+    natural = with_turn_off(
+        solved(SELECTION, DEAD_INTERVAL), turn_off="natural", forward_reapplied_s=2e-4
+    )
+    said = sentences(natural, 0)
+    assert len(said) == 1
+    assert "turns off naturally" in said[0]
+    assert "forward voltage stands on it 200 µs later" in said[0]
+    assert "until forward voltage" in [lane.name for lane in lanes_of(natural, 0)]
+    assert position_rows(natural)[0].margin_s == pytest.approx(2e-4 - 40e-6)
+
+
+def test_a_position_without_current_says_so() -> None:
+    idle = with_turn_off(solved(), turn_off="idle", forward_reapplied_s=None)
+    assert sentences(idle, 0) == ("T1 carries no current in this period.",)
+
+
 def test_igbts_need_no_commutation_circuit() -> None:
     igbt = Candidate(name="second", switch=Igbt())
     only = msgspec.structs.replace(SELECTION, candidates=(igbt,))
@@ -188,6 +214,13 @@ def test_a_position_looked_at_elsewhere_is_followed(page: TurnOff) -> None:
     page.document.looked_at = LookedAt(position=3)
     assert page.position_choice.value == 3
     assert "T4" in page._place.text()
+
+
+def test_another_operating_point_keeps_the_worst_position_in_view(page: TurnOff) -> None:
+    page.show_picture(solved(SELECTION, msgspec.structs.replace(DEAD_INTERVAL, position="T5")))
+    page.document.looked_at = LookedAt(frequency="high")
+    assert page.position_choice.value == WORST
+    assert page.position == 4
 
 
 def test_blanking_is_edited_here(qtbot: QtBot, page: TurnOff) -> None:

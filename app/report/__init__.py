@@ -1,0 +1,1 @@
+"""The selection report: a finished assessment laid out as PDF."""

@@ -1,0 +1,1 @@
+"""Tests of the engine, one file for each of its modules."""

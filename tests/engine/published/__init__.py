@@ -1,0 +1,1 @@
+"""Worked examples from print: source, inputs, printed answers with their digits."""
