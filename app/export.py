@@ -153,10 +153,10 @@ def _corner_rows(assessment: Assessment) -> Iterable[Row]:
     """The corners at which rows are at their worst, and which rows those are."""
     yield *_CORNER, "candidate", "worst_of"
     for result in assessment.candidates:
-        rows: dict[Row, list[str]] = {}
+        rows: dict[tuple[object, ...], list[str]] = {}
         for check in result.checks:
             if check.corner is not None:
                 key = tuple(getattr(check.corner, name) for name in _CORNER)
                 rows.setdefault(key, []).append(check.id)
-        for key, ids in rows.items():
-            yield *key, result.name, " ".join(ids)
+        for place, ids in rows.items():
+            yield *place, result.name, " ".join(ids)

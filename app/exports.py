@@ -31,11 +31,11 @@ class Exports(QObject):
         self._executor = ThreadPoolExecutor(1, thread_name_prefix="export")
         self._ended.connect(self._on_ended, Qt.ConnectionType.QueuedConnection)
 
-    def report(self, picture: Picture, name: str) -> None:
+    def report(self, picture: Picture, name: str, paper: str) -> None:
         path = self._dialogs.file_to_save(Path(f"{name}.pdf"), PDF)
         if path is not None:
             path = path if path.suffix else path.with_suffix(".pdf")
-            self._start(path, lambda: _write_report(picture, path))
+            self._start(path, lambda: _write_report(picture, path, paper))
 
     def tables(self, picture: Picture) -> None:
         folder = self._dialogs.folder_for_tables()
@@ -57,9 +57,7 @@ class Exports(QObject):
             self._ended.emit(path, error.strerror or str(error))
         except Exception:
             logging.getLogger(__name__).exception("export failed")
-            self._ended.emit(
-                path, "This is a mistake in the program; Help → Log holds the details."
-            )
+            self._ended.emit(path, MISTAKE)
         else:
             self._ended.emit(path, "")
 
@@ -71,10 +69,11 @@ class Exports(QObject):
             self.written.emit(path)
 
 
-def _write_report(picture: Picture, path: Path) -> None:
-    from app.report.pdf import report_pdf
+def _write_report(picture: Picture, path: Path, paper: str) -> None:
+    from app.report.pdf import paper_size, report_pdf
 
-    write_atomically(path, report_pdf(picture.selection, picture.assessment))
+    data = report_pdf(picture.selection, picture.assessment, paper_size(paper))
+    write_atomically(path, data)
 
 
 def _write_tables(picture: Picture, folder: Path) -> None:

@@ -49,6 +49,7 @@ from engine.version import VERSION
 
 MINIMUM = (1024, 640)
 USUAL = (1440, 830)
+MENU_HEIGHT = 26
 HEAD_HEIGHT = 36
 NOTICE_MS = 4000
 
@@ -122,8 +123,10 @@ class MainWindow(QMainWindow):
     def _page(self, title: str) -> Page:
         if title not in self._pages:
             page_type = self._page_types[self.page_titles.index(title)]
-            self._pages[title] = page_type(self.document)
-            self._stack.addWidget(self._pages[title])
+            page = self._pages[title] = page_type(self.document)
+            page.asked.connect(self.go_to)
+            page.report_asked.connect(self.export_report)
+            self._stack.addWidget(page)
         return self._pages[title]
 
     def _make_next_page(self) -> None:
@@ -158,10 +161,10 @@ class MainWindow(QMainWindow):
         else:
             self.current_page.copy()
 
-    def export_report(self) -> None:
+    def export_report(self, paper: str = "A4") -> None:
         picture = self.results.standing.picture
         if picture is not None:
-            self.exports.report(picture, self.files.name)
+            self.exports.report(picture, self.files.name, paper)
 
     def export_tables(self) -> None:
         picture = self.results.standing.picture
@@ -199,6 +202,7 @@ class MainWindow(QMainWindow):
         self.setMinimumSize(*MINIMUM)
         self.resize(*USUAL)
         self.setAcceptDrops(True)
+        self.menuBar().setFixedHeight(MENU_HEIGHT)
         self.rail = Rail(self.page_titles)
         self.looked_at_bar = LookedAtBar(self.document)
         self.verdict_line = VerdictLine()

@@ -13,7 +13,7 @@ from engine.bridge import LOWER_OF_LEG, UPPER_OF_LEG
 from engine.integrals import Gram, gram
 from engine.leg_states import current_scale_A
 from engine.pieces import Legs, Piece, opposite, terminal_voltages
-from engine.roots import Coefficients, Rates, added, crossings, difference, value
+from engine.roots import Coefficients, Rates, added, crossings, difference, extremes, value
 from engine.steady_state import SteadyState
 
 Functions = tuple[Coefficients, Coefficients, Coefficients]
@@ -175,12 +175,14 @@ def _signs(piece: Piece, nothing_A: float) -> Legs:
 
 
 def _sign(piece: Piece, leg: int, nothing_A: float) -> int:
-    """Sign of a leg's current over the piece: where it is largest of both ends and the middle."""
+    """Sign of a leg's current over a piece in which it does not change."""
     if not piece.legs[leg]:
         return 0
     f = piece.function(piece.circuit.line[leg])
-    h = piece.duration_s
-    largest = max(f[0], value(f, piece.rates, 0.5 * h), value(f, piece.rates, h), key=abs)
-    if abs(largest) <= nothing_A:
+    if abs(f[0]) > nothing_A:
+        return 1 if f[0] > 0.0 else -1
+    # It may rise from zero and be back at zero before the end.
+    lowest, highest = extremes(f, piece.rates, piece.duration_s)
+    if max(highest, -lowest) <= nothing_A:
         return 0
-    return 1 if largest > 0.0 else -1
+    return 1 if highest > -lowest else -1

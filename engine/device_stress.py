@@ -17,6 +17,7 @@ from engine.bridge import LOWER_OF_LEG, POSITIONS, UPPER_OF_LEG, Bridge
 from engine.conduction import Stretch, half_period
 from engine.duty import Triple
 from engine.integrals import integral, integral_of_square
+from engine.roots import extremes
 from engine.steady_state import SteadyState, solve
 from engine.stress import BridgeStress, DiodeStress, PositionStress, SwitchStress, TurnOff
 from engine.switching_events import events_of
@@ -37,7 +38,6 @@ from engine.waveform_measures import (
     LINE_VOLTAGE,
     LINK_CURRENT,
     Waveform,
-    extremes,
     harmonic,
     mean,
     mean_square,
@@ -197,7 +197,7 @@ def _blocking_peaks(half: Stretches, leg: int, link_V: float) -> tuple[float, fl
     """
     lowest, highest = link_V, 0.0
     for stretch in half:
-        low, high = extremes(stretch, stretch.terminal[leg])
+        low, high = extremes(stretch.terminal[leg], stretch.rates, stretch.duration_s)
         lowest, highest = min(lowest, low), max(highest, high)
     forward_V, reverse_V = max(link_V - lowest, highest), max(highest - link_V, -lowest)
     # An open leg rests against a rail to within rounding: that is no reverse voltage.

@@ -3,10 +3,9 @@
 from __future__ import annotations
 
 from engine.conduction import Stretch
-from engine.roots import first_fall
+from engine.roots import extremes, first_fall
 from engine.steady_state import SteadyState
-from engine.turn_off import Window, rises_of, window_of
-from engine.waveform_measures import extremes
+from engine.turn_off import Window, gate_off_current_A, rises_of, window_of
 
 
 def time_to_reach(state: SteadyState, position: int, current_A: float) -> float | None:
@@ -39,14 +38,13 @@ def _first_reach(stretch: Stretch, window: Window, current_A: float) -> float | 
 def least_current_after(state: SteadyState, position: int, time_s: float) -> float:
     """Smallest current of a switch from a time after its gate-on to its gate-off, A."""
     window = window_of(state, position)
-    least = float("inf")
+    least = gate_off_current_A(window)
     begin_s = 0.0
     for stretch in window.inside:
         end_s = begin_s + stretch.duration_s
         if end_s > time_s:
             rest = stretch.tail(max(0.0, time_s - begin_s))
-            line = rest.line[window.leg]
-            low, high = extremes(rest, line)
+            low, high = extremes(rest.line[window.leg], rest.rates, rest.duration_s)
             least = min(least, low if window.side > 0 else -high)
         begin_s = end_s
     return max(0.0, least)

@@ -33,12 +33,12 @@ def consistent_piece(
 ) -> Piece:
     """The piece of the leg state that holds from here on, its duration still zero.
 
-    `last` is preferred among equals, then the state with most open legs; with `left` the last
-    one has just come to its end and is not taken.
+    Among equals a leg without current is open rather than at a rail, and the `last` state is
+    kept; with `left` that one has just come to its end and is not taken.
     """
     states = list(_candidates(bridge, gates, currents))
     if len(states) > 1:
-        states.sort(key=lambda legs: (legs != last, -legs.count(0)))
+        states.sort(key=lambda legs: (-legs.count(0), legs != last))
         if left and last in states:
             states.remove(last)
     best: Piece | None = None

@@ -26,9 +26,6 @@ ON_STATE_KEYS: dict[type, tuple[str, str, str, str]] = {
 }
 """Threshold voltage and slope resistance: hot (at T_vj max), and at 25 °C."""
 
-USUAL_EXPONENTS = {"Eon": (1.0, 1.3, 0.003), "Eoff": (1.0, 1.3, 0.003), "Err": (0.6, 0.6, 0.006)}
-"""Exponents over current and voltage, and change per kelvin (common practice, no source)."""
-
 REVERSE_VOLTAGE_WITH_DIODE_V = 2.0
 """What a conducting feedback diode leaves across the switch (common practice: one or two)."""
 
@@ -193,8 +190,8 @@ def switching_energy(device: Igbt | Diode, name: str, events: Events) -> Loss:
     E_ref·(i/I_ref)^k_i·(v/V_ref)^k_v·(1 + α(T_vj − T_ref)).
     """
     by_current, by_voltage, per_K = (
-        usual if own is None else own
-        for own, usual in zip(energy_exponents(device, name), USUAL_EXPONENTS[name], strict=True)
+        condition(device, f"{name}_{key}")
+        for key in ("current_exponent", "voltage_exponent", "per_K")
     )
     reference_C = condition(device, "E_Tvj_C")
     shares = (events.current_A / entered(device, "E_current_A")) ** by_current
@@ -204,12 +201,6 @@ def switching_energy(device: Igbt | Diode, name: str, events: Events) -> Loss:
     )
     energy = entered(device, f"{name}_J") * shares.sum(axis=2)
     return Loss(energy * (1.0 - per_K * reference_C), energy * per_K)
-
-
-def energy_exponents(device: Igbt | Diode, name: str) -> tuple[float | None, ...]:
-    """Exponents over current and voltage and change per kelvin, as entered."""
-    keys = ("current_exponent", "voltage_exponent", "per_K")
-    return tuple(getattr(device, f"{name}_{key}") for key in keys)
 
 
 def _igbt_switching(switch: Igbt, table: StressTable) -> Loss:

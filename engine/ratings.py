@@ -31,9 +31,19 @@ USUAL_CONDITIONS: Mapping[str, float | str] = {
     "I_FSM_duration_s": 0.01,
     "tq_reverse_V": 50.0,
     "E_Tvj_C": 125.0,
+    "Eon_current_exponent": 1.0,
+    "Eon_voltage_exponent": 1.3,
+    "Eon_per_K": 0.003,
+    "Eoff_current_exponent": 1.0,
+    "Eoff_voltage_exponent": 1.3,
+    "Eoff_per_K": 0.003,
+    "Err_current_exponent": 0.6,
+    "Err_voltage_exponent": 0.6,
+    "Err_per_K": 0.006,
     "Rth_wave": "dc",
 }
-"""Test conditions that are taken, as assumed, where a sheet's have not been entered."""
+"""Test conditions, and the scaling of energies from them, that are taken as assumed where a
+sheet's have not been entered (common practice, no source)."""
 
 Basis = Literal["maximum", "typical", "read from curve", "assumed"]
 RthWave = Literal["dc", "sine180", "block120"]
@@ -161,6 +171,6 @@ def entered(device: Switch | Diode, key: str) -> float:
 
 
 def condition(device: Switch | Diode, key: str) -> float:
-    """A numeric test condition as entered, else the usual one."""
+    """A numeric test condition, or exponent, as entered, else the usual one."""
     own = getattr(device, key)
     return float(USUAL_CONDITIONS[key] if own is None else own)

@@ -144,3 +144,15 @@ def _sign_after(f: Coefficients, rates: Rates, s: float, end: float, slack: floa
         g = derivative(g, rates)
         scale *= end
     return 0
+
+
+def extremes(f: Coefficients, rates: Rates, end: float) -> tuple[float, float]:
+    """Lowest and highest value on [0, end], interior extrema included."""
+    if not any(f[1:]):
+        return f[0], f[0]
+    values = [f[0], value(f, rates, end)]
+    if len(f) > 2:  # a single exponential has no turn
+        slack = 1e-13 * sum(abs(b) for b in f[1:])
+        turns = crossings(derivative(f, rates), rates, end, slack)
+        values += [value(f, rates, s) for s in turns]
+    return min(values), max(values)

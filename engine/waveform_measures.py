@@ -8,7 +8,7 @@ from operator import attrgetter
 
 from engine.conduction import Functions, Stretch
 from engine.integrals import fourier, integral, integral_of_square
-from engine.roots import Coefficients, crossings, derivative, value
+from engine.roots import Coefficients, extremes
 
 Waveform = Callable[[Stretch], Coefficients]
 """A quantity's coefficients on a stretch."""
@@ -51,24 +51,11 @@ def _length(stretches: Sequence[Stretch]) -> float:
     return sum(stretch.duration_s for stretch in stretches)
 
 
-def extremes(stretch: Stretch, f: Coefficients) -> tuple[float, float]:
-    """Lowest and highest value over a stretch, interior extrema included."""
-    if not any(f[1:]):
-        return f[0], f[0]
-    h = stretch.duration_s
-    values = [f[0], value(f, stretch.rates, h)]
-    if len(f) > 2:  # a single exponential has no turn
-        slope = derivative(f, stretch.rates)
-        slack = 1e-13 * sum(abs(b) for b in f[1:])
-        values += [value(f, stretch.rates, s) for s in crossings(slope, stretch.rates, h, slack)]
-    return min(values), max(values)
-
-
 def peak(stretches: Sequence[Stretch], waveform: Waveform) -> float:
     """Largest absolute value, both sides of every jump counted."""
     highest = 0.0
     for stretch in stretches:
-        low, high = extremes(stretch, waveform(stretch))
+        low, high = extremes(waveform(stretch), stretch.rates, stretch.duration_s)
         highest = max(highest, -low, high)
     return highest
 

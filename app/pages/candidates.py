@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable
 from functools import partial
 
-from PySide6.QtCore import Qt, Signal
+from PySide6.QtCore import Qt
 from PySide6.QtGui import QAction, QGuiApplication, QKeySequence, QResizeEvent
 from PySide6.QtWidgets import (
     QHBoxLayout,
@@ -43,9 +43,6 @@ class Candidates(Page):
     """Everything on it is an edit of the document; figures come from the last picture."""
 
     title = "Candidates"
-
-    asked = Signal(str)
-    """Key of an entry on another page."""
 
     def __init__(self, document: OpenSelection) -> None:
         super().__init__(document)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from PySide6.QtCore import Signal
 from PySide6.QtGui import QGuiApplication
 from PySide6.QtWidgets import QWidget
 
@@ -18,6 +19,11 @@ class Page(QWidget):
 
     title: str
     """As on the rail."""
+
+    asked = Signal(str)
+    """Key of an entry, here or on another page, that the user wants to go to."""
+    report_asked = Signal(str)
+    """The report is to be saved; the size of its paper."""
 
     def __init__(self, document: OpenSelection) -> None:
         super().__init__()

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 
-from PySide6.QtCore import QRectF, QSizeF
+from PySide6.QtCore import QRect, QRectF, QSizeF
 from PySide6.QtGui import (
     QFont,
     QPainter,
@@ -20,13 +20,14 @@ from app.report.html import TOKEN_END, TOKEN_START, html_of
 from app.report.waveform_figure import draw_waveforms
 from app.theme import LIGHT, font
 from app.widgets.verdict_mark import draw_verdict_mark
+from engine.checks import VERDICTS, Verdict
 from engine.waveforms import Waveforms
 
 _DRAWING = QTextFormat.ObjectTypes.UserObject + 1
 _NAME = QTextFormat.Property.UserProperty + 1
 _TOKEN = re.compile(f"{TOKEN_START}([^{TOKEN_END}]*){TOKEN_END}")
 _OBJECT = "\ufffc"
-MARK_SIZE = 9.0
+_VERDICT_OF: dict[str, Verdict] = {verdict: verdict for verdict in VERDICTS}
 _NEAR = 40.0  # px: a title needs this much of its text or table beside it
 
 
@@ -41,22 +42,23 @@ class _Drawings(QPyTextObject):
     def intrinsicSize(self, document: QTextDocument, position: int, form: QTextFormat) -> QSizeF:
         kind, _, rest = str(form.property(_NAME)).partition(" ")
         if kind == "mark":
-            return QSizeF(MARK_SIZE, MARK_SIZE)
+            side = float(rest.split(",")[1])
+            return QSizeF(side, side)
         return QSizeF(self._width, float(rest.split()[-1]))
 
     def drawObject(
         self,
         painter: QPainter,
-        rect: QRectF,
+        rect: QRectF | QRect,
         document: QTextDocument,
         position: int,
         form: QTextFormat,
     ) -> None:
         kind, _, rest = str(form.property(_NAME)).partition(" ")
         if kind == "mark":
-            draw_verdict_mark(painter, rect, rest, LIGHT)  # type: ignore[arg-type]
+            draw_verdict_mark(painter, QRectF(rect), _VERDICT_OF[rest.split(",")[0]], LIGHT)
         elif self._waveforms is not None:
-            draw_waveforms(painter, rect, self._waveforms)
+            draw_waveforms(painter, QRectF(rect), self._waveforms)
 
 
 def laid_out(
@@ -64,7 +66,7 @@ def laid_out(
 ) -> QTextDocument:
     """The report as pages of a size in px of 1/96 inch, without header and footer."""
     document = QTextDocument()
-    document.setDefaultFont(font(11))
+    document.setDefaultFont(print_font(11))
     document.setDocumentMargin(0.0)
     document.documentLayout().registerHandler(
         _DRAWING, _Drawings(page.width(), waveforms, document)
@@ -74,6 +76,13 @@ def laid_out(
     document.setPageSize(page)
     _keep_titles_with_what_follows(document, page.height())
     return document
+
+
+def print_font(size: int) -> QFont:
+    """The font without joined letters: who searches for 'fingerprint' would not find them."""
+    made = font(size)
+    made.setFeature(QFont.Tag("liga"), 0)
+    return made
 
 
 def _keep_titles_with_what_follows(document: QTextDocument, page_height: float) -> None:
@@ -100,12 +109,13 @@ def _keep_titles_with_what_follows(document: QTextDocument, page_height: float) 
 
 def _place_drawings(document: QTextDocument) -> None:
     """Put an object in the place of every token, from the last so that positions hold."""
-    text = document.toRawText()
-    for match in reversed(list(_TOKEN.finditer(text))):
-        cursor = QTextCursor(document)
+    cursor = QTextCursor(document)
+    cursor.beginEditBlock()  # else the document is laid out anew after each
+    for match in reversed(list(_TOKEN.finditer(document.toRawText()))):
         cursor.setPosition(match.start())
         cursor.setPosition(match.end(), QTextCursor.MoveMode.KeepAnchor)
         form = QTextCharFormat()
         form.setObjectType(_DRAWING)
         form.setProperty(_NAME, match[1])
         cursor.insertText(_OBJECT, form)
+    cursor.endEditBlock()

@@ -50,7 +50,8 @@ def _block(block: Block) -> str:
 
 
 def _paragraph(block: Paragraph) -> str:
-    mark = token(f"mark {block.verdict}") + "&nbsp;" if block.verdict else ""
+    side = 16 if block.style == "verdict" else 9
+    mark = token(f"mark {block.verdict},{side}") + "&nbsp;" if block.verdict else ""
     above = 8 if block.style == "heading" else 0
     return (
         f'<p style="{_STYLES[block.style]}; margin-top:{above}px; margin-bottom:5px">'
@@ -92,7 +93,7 @@ def _row(row: Row, align: str) -> str:
     weight = "font-weight:bold; " if row.strong else ""
     cells = list(map(_text, row.cells))
     if row.verdict:
-        cells[-1] = f"{token(f'mark {row.verdict}')}&nbsp;{row.verdict}"
+        cells[-1] = f"{token(f'mark {row.verdict},9')}&nbsp;{row.verdict}"
     line = "".join(
         f'<td align="{_side(side)}" style="{weight}{_CELL}; font-size:10px; {rule}">{cell}</td>'
         for cell, side in zip(cells, align, strict=True)

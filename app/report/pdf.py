@@ -21,9 +21,9 @@ from PySide6.QtWidgets import QApplication
 
 from app.export import results_json
 from app.report.content import sections_of
-from app.report.document import laid_out
+from app.report.document import laid_out, print_font
 from app.selection_file import selection_bytes
-from app.theme import LIGHT, font, line_pen, load_fonts
+from app.theme import LIGHT, line_pen, load_fonts
 from engine.bridge import nominal_bridge
 from engine.checks import Assessment
 from engine.duty import duty_of
@@ -37,6 +37,11 @@ _DPI = 96
 _SIDE, _HEAD, _FOOT = 62.0, 84.0, 62.0
 _SIZES = {"A4": QPageSize.PageSizeId.A4, "Letter": QPageSize.PageSizeId.Letter}
 _NAMESPACE = QUuid("{4d0f0f64-3d0f-5d4e-9a55-4f6b8a3d9d11}")
+
+
+def paper_size(name: object) -> PageSize:
+    """The size that a name means; A4 where it means none."""
+    return "Letter" if name == "Letter" else "A4"
 
 
 @dataclass(frozen=True)
@@ -56,11 +61,11 @@ class Report:
 def report_of(selection: Selection, assessment: Assessment, size: PageSize = "A4") -> Report:
     """Lay out the report of a finished assessment."""
     load_fonts()
-    paper = QPageSize(_SIZES[size]).size(QPageSize.Unit.Point) * _DPI / 72.0
+    paper = QSizeF(QPageSize(_SIZES[size]).size(QPageSize.Unit.Point)) * (_DPI / 72.0)
     body = QSizeF(paper.width() - 2 * _SIDE, paper.height() - _HEAD - _FOOT)
     waveforms = sampled(solve(nominal_bridge(duty_of(selection))))
     document = laid_out(sections_of(selection, assessment), body, waveforms)
-    return Report(document, QSizeF(paper), _head_lines(selection, assessment))
+    return Report(document, paper, _head_lines(selection, assessment))
 
 
 def paint_page(painter: QPainter, report: Report, number: int) -> None:
@@ -83,7 +88,7 @@ def _paint_margins(painter: QPainter, report: Report, number: int) -> None:
     width = paper.width() - 2 * _SIDE
     painter.save()
     painter.setPen(LIGHT.second_ink)
-    painter.setFont(font(9))
+    painter.setFont(print_font(9))
     for line, text in enumerate(report.head):
         box = QRectF(_SIDE, 34 + 14 * line, width, 14)
         elided = painter.fontMetrics().elidedText(text, Qt.TextElideMode.ElideRight, int(width))

@@ -28,6 +28,9 @@ DIODE_DASH = (3.0, 2.0)
 HATCH_APART = 7.0
 _STRAIGHT_PX = 0.05
 _THINNINGS = 4
+_void_pointer: Any = (
+    shiboken6.VoidPtr
+)  # its declared types leave out the size and the right to write
 
 
 @dataclass(frozen=True, slots=True)
@@ -100,8 +103,7 @@ def polygon_of(x: Array, y: Array) -> QPolygonF:
     """The points as Qt wants them, written into Qt's memory at once: a loop costs ten times."""
     polygon = QPolygonF()
     polygon.resize(len(x))
-    start: Any = polygon.data()
-    memory: Any = shiboken6.VoidPtr(start, len(x) * 16, True)
+    memory = _void_pointer(polygon.data(), len(x) * 16, True)
     points = np.frombuffer(memory, dtype=np.float64).reshape(len(x), 2)
     points[:, 0] = x
     points[:, 1] = y

@@ -11,9 +11,10 @@ from collections.abc import Iterable
 from dataclasses import replace
 
 import numpy as np
-from PySide6.QtCore import QPointF, QRectF, QSize, Qt
+from PySide6.QtCore import QPointF, QRectF, QSize, Qt, Signal
 from PySide6.QtGui import (
     QAccessible,
+    QContextMenuEvent,
     QFocusEvent,
     QKeyEvent,
     QMouseEvent,
@@ -50,9 +51,12 @@ Key, Modifier = Qt.Key, Qt.KeyboardModifier
 class Strips(QWidget):
     """Shows a picture's waveforms. ←/→ move the cursor, ↑/↓ choose a strip, Space folds it."""
 
-    def __init__(self, cursor: AngleCursor) -> None:
+    menu_asked = Signal(object)
+    """A menu for the current strip at this place on the screen, a `QPoint`."""
+
+    def __init__(self, angle_cursor: AngleCursor) -> None:
         super().__init__()
-        self.angle_cursor = cursor
+        self.angle_cursor = angle_cursor
         self._picture: Picture | None = None
         self._strips: tuple[Strip, ...] = EMPTY
         self._scales: Scales = {}
@@ -66,7 +70,7 @@ class Strips(QWidget):
         self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
         self.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Expanding)
         self.setMinimumSize(300, 240)
-        cursor.moved.connect(self._on_cursor)
+        angle_cursor.moved.connect(self._on_cursor)
         theme_signals.changed.connect(self._on_theme)
 
     # What is shown ----------------------------------------------------------------------
@@ -91,6 +95,10 @@ class Strips(QWidget):
     def current(self) -> str:
         """Key of the strip that the keyboard works on."""
         return self._strips[self._current].key
+
+    @property
+    def current_title(self) -> str:
+        return self._strips[self._current].title
 
     def show_picture(self, picture: Picture) -> None:
         self._picture, self._needs = picture, ""
@@ -205,7 +213,7 @@ class Strips(QWidget):
             self._curves.setDevicePixelRatio(ratio)
             self._curves.fill(theme().ground)
             painter = QPainter(self._curves)
-            paint_strips(painter, self._sheet, self._strips, self._layout, self._parts())
+            paint_strips(painter, self._sheet, self._strips, self._layout, self.parts())
             painter.end()
         return self._curves
 
@@ -242,7 +250,7 @@ class Strips(QWidget):
         self._paint_tag(painter, foot.adjusted(0, 4, 0, -2), self.place_in_words(), angles)
         narrow = self._names_of_narrow_part()
         if narrow:
-            parts = [self._part_room(*part) for part in self._parts()]
+            parts = [self._part_room(*part) for part in self.parts()]
             self._paint_tag(painter, self._layout.head, narrow, parts)
 
     def _paint_tag(
@@ -260,7 +268,8 @@ class Strips(QWidget):
         painter.setPen(theme().accent)
         painter.drawText(room, MIDDLE, text)
 
-    def _parts(self) -> list[tuple[float, float, str]]:
+    def parts(self) -> list[tuple[float, float, str]]:
+        """Start, end and names of the parts of the period that conduct alike."""
         return conduction_parts(self._picture.waveforms) if self._picture else []
 
     def _part_room(self, start_deg: float, end_deg: float, names: str) -> QRectF:
@@ -268,13 +277,20 @@ class Strips(QWidget):
         room = self._layout.axis.rect(start_deg, end_deg, self._layout.head)
         return room.adjusted(1.0, 0.0, -1.0, 0.0)
 
+    def _part_at_cursor(self) -> tuple[float, float, str]:
+        at_deg = self.angle_cursor.angle_deg
+        here = (part for part in self.parts() if part[0] <= at_deg < part[1])
+        return next(here, (0.0, 360.0, ""))
+
+    def conducting_at_cursor(self) -> str:
+        """The devices that conduct, '–' where none does."""
+        return self._part_at_cursor()[2]
+
     def _names_of_narrow_part(self) -> str:
         """The devices at the cursor where the head has no room to name them."""
-        for start_deg, end_deg, names in self._parts():
-            if start_deg <= self.angle_cursor.angle_deg < end_deg:
-                room = self._layout.axis.rect(start_deg, end_deg, self._layout.head)
-                return "" if fits(names, room.width()) else names
-        return ""
+        start_deg, end_deg, names = self._part_at_cursor()
+        room = self._layout.axis.rect(start_deg, end_deg, self._layout.head)
+        return "" if fits(names, room.width()) else names
 
     def _paint_values(self, painter: QPainter) -> None:
         right, at_deg = self.width() - 2.0, self.angle_cursor.angle_deg
@@ -323,11 +339,12 @@ class Strips(QWidget):
         self.angle_cursor.move_to_event([event.angle_deg for event in events], forwards)
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
-        if event.button() != Qt.MouseButton.LeftButton:
-            return
         key = self._key_at(event.position())
         if key is not None:
             self._current = [strip.key for strip in self._strips].index(key)
+            self.update()
+        if event.button() != Qt.MouseButton.LeftButton:
+            return
         if key is not None and self._is_on_heading(key, event.position()):
             self.fold(key)
         else:
@@ -337,9 +354,11 @@ class Strips(QWidget):
         if event.buttons() & Qt.MouseButton.LeftButton:
             self._drag_to(event.position())
 
+    def contextMenuEvent(self, event: QContextMenuEvent) -> None:
+        self.menu_asked.emit(event.globalPos())
+
     def _drag_to(self, point: QPointF) -> None:
         self.angle_cursor.move_to(self._layout.axis.angle_deg(point.x()))
-        self.update()
 
     def _key_at(self, point: QPointF) -> str | None:
         rooms = self._layout.rooms.items()

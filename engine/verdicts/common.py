@@ -1,28 +1,26 @@
-"""Judges that more than one kind of device shares: voltages, currents, junction temperature."""
+"""Judges that more than one kind of device shares: voltages, largest currents, temperature."""
 
 from __future__ import annotations
 
 from collections.abc import Callable
-from functools import partial
-from typing import TypeVar
 
 import numpy as np
 
 from engine.junction_temperature import on_one_sink_with
-from engine.losses import on_state_drop
-from engine.ratings import condition
 from engine.stress_table import Array, StressTable
 from engine.verdicts.case import Case
 from engine.verdicts.comparison import Comparison, Place
-from engine.verdicts.row import Finding, Judge, Open, Row
-from engine.verdicts.wording import celsius, named, number, quantity
+from engine.verdicts.row import Finding, Judge, Row
+from engine.verdicts.wording import celsius, number, quantity
 
-Number = TypeVar("Number", float, Array)
+THERMAL = ("Rth_jc_K_per_W", "Rth_ch_K_per_W", "leakage_A")
+"""Ratings that a junction temperature rests on beside the device's losses."""
 
-HALF_SINE_FORM = np.pi / 2.0
-"""Rms over average of a half-sine, for which I_T(AV) and I_F(AV) are stated."""
-DIRECT_FORM = 1.0
-"""The same of a direct current, for which I_C is stated."""
+
+def energy_conditions(*stems: str) -> tuple[str, ...]:
+    """What the scaling of some switching energies rests on."""
+    keys = ("current_exponent", "voltage_exponent", "per_K")
+    return ("E_Tvj_C", *(f"{stem}_{key}" for stem in stems for key in keys))
 
 
 def without_diodes(case: Case) -> str | None:
@@ -97,94 +95,6 @@ def instantaneous(case: Case) -> StressTable:
 
 def thermal(case: Case) -> StressTable:
     return case.solved.thermal
-
-
-# Average currents, by equal loss ----------------------------------------------------------
-
-
-def equal_loss_average(
-    threshold_V: float, slope_ohm: float, form: Number, loss_W: Number
-) -> Number:
-    """Average of a wave of some form factor that causes a loss: V_0·I + r·(form·I)² = loss."""
-    square = 4.0 * slope_ohm * form**2 * loss_W
-    return 2.0 * loss_W / (threshold_V + (threshold_V**2 + square) ** 0.5)
-
-
-def cooling_share(case_C: Array, rated_case_C: float, Tvj_max_C: float) -> Array:
-    """Share of the rated loss that a case hotter than the rating's still allows, at most 1."""
-    return np.clip((Tvj_max_C - case_C) / (Tvj_max_C - rated_case_C), 0.0, 1.0)
-
-
-def average_by_loss(rated_form: float, wave: str) -> Judge:
-    """Judge of an average current against the one of its own wave that causes the rated loss.
-
-    The row's first condition is the case temperature of the rating.
-    """
-    return partial(_average_by_loss, rated_form=rated_form, wave=wave)
-
-
-def _average_by_loss(case: Case, row: Row, rated_form: float, wave: str) -> Finding:
-    device, heat, table = row.device(case), case.heat, case.solved.thermal
-    rated_case_C, Tvj_max_C = condition(device, row.conditions[0]), device.Tvj_max_C
-    assert heat is not None
-    assert Tvj_max_C is not None
-    V0, r = on_state_drop(device)
-    if rated_case_C >= Tvj_max_C:
-        key = f"{row.part}.{row.conditions[0]}"
-        return Open(f"needs {named(key)} below T_vj max, {celsius(Tvj_max_C)}", (key,))
-    if V0 == r == 0.0:
-        key = f"{row.part}.{row.keys[1]}"
-        return Open(f"needs {named(key)} above 0, or a slope resistance", (key,))
-    of_switch = row.part == "switch"
-    average = table.switch_average_A if of_switch else table.diode_average_A
-    rms = table.switch_rms_A if of_switch else table.diode_rms_A
-    case_C = heat.switch_case_C if of_switch else heat.diode_case_C
-    carries = average > 0.0
-    form = np.where(carries, rms / np.where(carries, average, 1.0), 1.0)
-    rated_A, fraction = row.compared(case), row.fraction(case)
-    rated_W = V0 * rated_A + r * (rated_form * rated_A) ** 2
-    share = cooling_share(case_C, rated_case_C, Tvj_max_C)
-    equal_A = equal_loss_average(V0, r, form, share * rated_W)
-
-    def rating_for(target: float, place: Place) -> float | None:
-        if place.of(share) == 0.0:
-            return None
-        own_A = target / fraction
-        loss_W = (V0 * own_A + r * (place.of(form) * own_A) ** 2) / place.of(share)
-        return equal_loss_average(V0, r, rated_form, loss_W)
-
-    def how(place: Place) -> str:
-        rated = quantity(rated_A, "A")
-        squared = f"({number(rated_form)} × {rated})²" if rated_form != 1.0 else f"({rated})²"
-        loss = (
-            f"{rated} {wave} at a case of {celsius(rated_case_C)}: {number(V0)} V × {rated} + "
-            f"{quantity(r, 'Ω')} × {squared} = {quantity(rated_W, 'W')}"
-        )
-        if place.of(share) < 1.0:
-            loss += (
-                f"; case {celsius(place.of(case_C))}: × ({celsius(Tvj_max_C)} − case)/"
-                f"({celsius(Tvj_max_C)} − {celsius(rated_case_C)}) = × {number(place.of(share))}"
-            )
-        equal = place.of(equal_A)
-        return (
-            f"average {quantity(place.of(average), 'A')}, form factor {number(place.of(form))}; "
-            f"{loss}; with this form factor the same loss at {quantity(equal, 'A')}, "
-            f"× {number(fraction)} = {quantity(equal * fraction, 'A')}"
-        )
-
-    return Comparison(
-        points=table.points,
-        applied=average,
-        allowed=equal_A * fraction,
-        fraction=fraction,
-        how=how,
-        rating_for=rating_for,
-        ambient="high",
-        nothing_allowed="the case is as hot as T_vj max",
-    )
-
-
-# Junction temperature ---------------------------------------------------------------------
 
 
 def junction(case: Case, row: Row) -> Finding:

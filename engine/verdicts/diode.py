@@ -4,9 +4,10 @@ from __future__ import annotations
 
 from functools import partial
 
+from engine.verdicts.average_current import HALF_SINE_FORM, average_by_loss
 from engine.verdicts.common import (
-    HALF_SINE_FORM,
-    average_by_loss,
+    THERMAL,
+    energy_conditions,
     instantaneous,
     junction,
     largest,
@@ -50,5 +51,14 @@ ROWS: tuple[Row, ...] = (
     _row("diode.I_FSM", "I_FSM", "A", _A_SHOOT_THROUGH),
     _row("diode.I2t", "I²t", "A2s", _A_SHOOT_THROUGH),
     _row("diode.didt_recovery", "−di/dt", "A/s", waits_for("the di/dt reactor and the snubber")),
-    _row("diode.Tvj", "T_vj", "C", junction, keys=("Tvj_max_C", *_ON_STATE), heat=True),
+    _row(
+        "diode.Tvj",
+        "T_vj",
+        "C",
+        junction,
+        keys=("Tvj_max_C", *_ON_STATE),
+        refines=(*THERMAL, "Err_J", "Qrr_As"),
+        conditions=energy_conditions("Err"),
+        heat=True,
+    ),
 )

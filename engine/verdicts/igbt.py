@@ -8,10 +8,11 @@ import numpy as np
 
 from engine.ratings import Igbt, entered
 from engine.stress_table import Array, StressTable
+from engine.verdicts.average_current import DIRECT_FORM, average_by_loss
 from engine.verdicts.case import Case
 from engine.verdicts.common import (
-    DIRECT_FORM,
-    average_by_loss,
+    THERMAL,
+    energy_conditions,
     instantaneous,
     junction,
     largest,
@@ -178,5 +179,14 @@ ROWS: tuple[Row, ...] = (
         refines=("driver_skew_s",),
     ),
     Row("switch.tsc", "t_psc", "s", waits_for("the calculation of a shoot-through")),
-    Row("switch.Tvj", "T_vj", "C", junction, keys=("Tvj_max_C", *_ON_STATE), heat=True),
+    Row(
+        "switch.Tvj",
+        "T_vj",
+        "C",
+        junction,
+        keys=("Tvj_max_C", *_ON_STATE),
+        refines=(*THERMAL, "Eon_J", "Eoff_J"),
+        conditions=energy_conditions("Eon", "Eoff"),
+        heat=True,
+    ),
 )

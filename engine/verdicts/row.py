@@ -15,6 +15,8 @@ from engine.verdicts.wording import named, percent
 
 Part = Literal["switch", "diode"]
 
+ENERGY_STEMS = ("Eon", "Eoff", "Err")
+
 BASES = ("maximum", "read from curve", "typical", "assumed")
 """How sure a rating is, the surest first."""
 
@@ -171,5 +173,14 @@ def _weakest_basis(row: Row, case: Case) -> str | None:
 
 def _basis(device: Switch | Diode, key: str) -> str | None:
     if getattr(device, key) is None:
-        return "assumed" if key in USUAL_CONDITIONS else None
+        return "assumed" if key in USUAL_CONDITIONS and _is_used(device, key) else None
     return device.basis.get(key)
+
+
+def _is_used(device: Switch | Diode, condition_key: str) -> bool:
+    """Whether the energy that a condition or an exponent belongs to has been entered."""
+    stem, _, _ = condition_key.partition("_")
+    energies = {"E": ENERGY_STEMS, "Eon": ("Eon",), "Eoff": ("Eoff",), "Err": ("Err",)}.get(stem)
+    if energies is None:
+        return True
+    return any(getattr(device, f"{name}_J", None) is not None for name in energies)

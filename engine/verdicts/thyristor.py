@@ -2,10 +2,10 @@
 
 from __future__ import annotations
 
+from engine.verdicts.average_current import HALF_SINE_FORM, average_by_loss
 from engine.verdicts.case import Case
 from engine.verdicts.common import (
-    HALF_SINE_FORM,
-    average_by_loss,
+    THERMAL,
     instantaneous,
     junction,
     largest,
@@ -78,5 +78,13 @@ ROWS: tuple[Row, ...] = (
     Row("switch.gate_pulse", "gate pulse", "s", gate_pulse, keys=("I_L_A",), refines=("V_T0_V",)),
     Row("switch.V_steady", "V_DRM, steady", "V", steady_link, keys=("V_DRM_V",)),
     Row("switch.V_isol", "V_isol", "V", steady_link, keys=("V_isol_V",)),
-    Row("switch.Tvj", "T_vj", "C", junction, keys=("Tvj_max_C", *_ON_STATE), heat=True),
+    Row(
+        "switch.Tvj",
+        "T_vj",
+        "C",
+        junction,
+        keys=("Tvj_max_C", *_ON_STATE),
+        refines=THERMAL,
+        heat=True,
+    ),
 )

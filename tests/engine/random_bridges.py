@@ -9,7 +9,9 @@ from engine.bridge import Bridge
 from engine.duty import Triple
 
 
-def random_bridge(random: Random, *, inductive: bool = False, longest_periods: float = 2.0) -> Bridge:
+def random_bridge(
+    random: Random, *, inductive: bool = False, longest_periods: float = 2.0
+) -> Bridge:
     """Star or delta, any conduction angle and blanking, balanced or not, some L = 0.
 
     L/R lies between 0.003 and `longest_periods` periods, before branches are made to differ.
@@ -32,7 +34,9 @@ def random_bridge(random: Random, *, inductive: bool = False, longest_periods: f
     )
 
 
-def _branches(random: Random, frequency_Hz: float, longest: float) -> tuple[list[float], list[float]]:
+def _branches(
+    random: Random, frequency_Hz: float, longest: float
+) -> tuple[list[float], list[float]]:
     R = [10.0 ** random.uniform(-1.0, 2.0)] * 3
     time_constant = longest * (0.003 / longest) ** random.random() / frequency_Hz
     L = [R[0] * time_constant] * 3

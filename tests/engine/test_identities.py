@@ -12,8 +12,8 @@ from hypothesis import strategies as st
 from engine.bridge import Bridge
 from engine.device_stress import stress_from_pieces
 from engine.duty import Triple
-from engine.period_map import Walk
 from engine.gating import gate_steps
+from engine.period_map import Walk
 from engine.steady_state import solve
 from engine.stress import BridgeStress, PositionStress
 from tests.engine.random_bridges import random_bridge

@@ -8,7 +8,7 @@ For loads with inductance in every branch.
 from __future__ import annotations
 
 from dataclasses import dataclass
-from itertools import product
+from itertools import pairwise, product
 
 import numpy as np
 from scipy.integrate import solve_ivp
@@ -155,7 +155,7 @@ class March:
         """Currents after one period, and the period's integrals (see `_integrands`)."""
         edges = gate_edges(self.bridge)
         sums = np.zeros(21)
-        for start, end in zip(edges[:-1], edges[1:], strict=True):
+        for start, end in pairwise(edges):
             gates = gates_at(self.bridge, 0.5 * (start + end))
             currents, parts = self._step(gates, currents, end - start, measured)
             sums += parts

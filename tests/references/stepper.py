@@ -9,7 +9,7 @@ two step lengths are extrapolated to second order.
 
 from __future__ import annotations
 
-from itertools import product
+from itertools import pairwise, product
 
 import numpy as np
 
@@ -120,7 +120,7 @@ def _averages(bridge: Bridge, start: np.ndarray, steps: int) -> dict[str, np.nda
     }
     legs: Legs = (0, 0, 0)
     edges = gate_edges(bridge)
-    for begin, end in zip(edges[:-1], edges[1:], strict=True):
+    for begin, end in pairwise(edges):
         count = max(4, round(steps * (end - begin) / period))
         stepper = Stepper(bridge, (end - begin) / count)
         gates = gates_at(bridge, 0.5 * (begin + end))

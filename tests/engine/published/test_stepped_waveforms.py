@@ -21,7 +21,7 @@ from engine.bridge import Bridge
 from engine.conduction import half_period, stretches_of
 from engine.device_stress import stress_at, stress_from_pieces
 from engine.pieces import terminal_voltages
-from engine.roots import value
+from engine.roots import extremes, value
 from engine.steady_state import solve
 from engine.stress import BridgeStress
 from engine.waveform_measures import (
@@ -29,7 +29,6 @@ from engine.waveform_measures import (
     LINE_CURRENT,
     LINE_VOLTAGE,
     LINK_CURRENT,
-    extremes,
     harmonic,
     mean,
 )
@@ -182,7 +181,10 @@ def test_link_current() -> None:
         assert stress.link_current_avg_A == pytest.approx(6.693922, abs=1e-6)
         assert stress.link_current_rms_A == pytest.approx(7.764648, abs=1e-6)
         assert stress.link_current_ripple_rms_A == pytest.approx(3.934611, abs=1e-6)
-    ranges = [extremes(part, LINK_CURRENT(part)) for part in half_period(solve(RASHID))]
+    ranges = [
+        extremes(LINK_CURRENT(part), part.rates, part.duration_s)
+        for part in half_period(solve(RASHID))
+    ]
     assert min(low for low, _ in ranges) == pytest.approx(-0.825464, abs=1e-6)
     assert max(high for _, high in ranges) == pytest.approx(12.845678, abs=1e-6)
 

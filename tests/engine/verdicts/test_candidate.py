@@ -20,7 +20,15 @@ from engine.verdicts.candidate import (
     verdict_of,
     weakest_basis,
 )
-from tests.engine.hand_made import FREEWHEEL, IGBT, THYRISTOR, candidate, selection
+from tests.engine.hand_made import (
+    FREEWHEEL,
+    IGBT,
+    THYRISTOR,
+    candidate,
+    selection,
+    solved_by_hand,
+    stress,
+)
 
 CANDIDATES = {"thyristor": candidate(THYRISTOR), "igbt": candidate(IGBT)}
 SOLVED = solved(duty_of(selection()))
@@ -120,6 +128,31 @@ def test_losses_and_peak_are_those_of_the_hottest_junction():
     assert result.switch_losses.on_state_W == pytest.approx(result.switch_loss_W)
     assert result.diode_losses.on_state_W == pytest.approx(result.diode_loss_W)
     assert result.diode_loss_W < result.switch_loss_W
+
+
+# In a hand-made bridge at 540 V, T2's switch carries twice the current of the others and D3 four
+# times: 22·1 + 44²·6e-3 = 33.6 W at 594 V, and 8.8·0.9 + 26.4²·8e-3 = 13.5 W.
+def test_losses_are_those_of_the_worst_switch_and_the_worst_diode():
+    made = stress(
+        {
+            "T2": {"switch": {"current_avg_A": 20.0, "current_rms_A": 40.0}},
+            "T3": {"diode": {"current_avg_A": 8.0, "current_rms_A": 24.0}},
+        }
+    )
+    bridge = solved_by_hand(made, selection())
+    switch = msgspec.structs.replace(THYRISTOR, I_L_A=None)
+    result = candidate_result(candidate(switch), bridge, COMMON_PRACTICE)
+    assert result.switch_loss_W == pytest.approx(22.0 + 6e-3 * 44.0**2)
+    assert result.diode_loss_W == pytest.approx(8.8 * 0.9 + 8e-3 * 26.4**2)
+    assert result.switch_losses.on_state_W == pytest.approx(result.switch_loss_W)
+    assert result.diode_losses.on_state_W == pytest.approx(result.diode_loss_W)
+
+
+def test_where_the_diode_is_the_hotter_one_its_temperature_is_the_peak():
+    diode = msgspec.structs.replace(FREEWHEEL, Rth_jc_K_per_W=30.0)
+    result = candidate_result(candidate(diode=diode), SOLVED, COMMON_PRACTICE)
+    hottest = next(one for one in result.checks if one.id == "diode.Tvj")
+    assert result.junction_peak_C == pytest.approx(hottest.applied)
 
 
 def test_the_causes_of_a_loss_add_up_to_it():

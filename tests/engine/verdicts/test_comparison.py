@@ -6,7 +6,13 @@ import numpy as np
 import pytest
 
 from engine.stress_table import OperatingPoints
-from engine.verdicts.comparison import Comparison, Place, verdict_of_headroom, worst_of
+from engine.verdicts.comparison import (
+    ROUNDING_PCT,
+    Comparison,
+    Place,
+    verdict_of_headroom,
+    worst_of,
+)
 
 
 def comparison(applied, allowed, **kwargs):
@@ -25,10 +31,12 @@ def comparison(applied, allowed, **kwargs):
     [
         (None, "undersized"),
         (-0.001, "undersized"),
-        (-1e-12, "tight"),
+        (-2.0 * ROUNDING_PCT, "undersized"),
+        (-ROUNDING_PCT, "tight"),
         (0.0, "tight"),
         (9.999, "tight"),
-        (10.0 - 1e-12, "adequate"),
+        (10.0 - 2.0 * ROUNDING_PCT, "tight"),
+        (10.0 - ROUNDING_PCT, "adequate"),
         (10.0, "adequate"),
         (100.0, "adequate"),
     ],

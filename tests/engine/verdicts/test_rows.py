@@ -177,7 +177,7 @@ def test_a_case_hotter_than_the_ratings_allows_less_loss():
     share = (125.0 - (45.0 + 4.0 * 13.904)) / (125.0 - 85.0)
     loss_W = share * (40.0 + 6e-3 * (40.0 * pi / 2) ** 2)
     assert check.allowed == pytest.approx(0.8 * (-1.0 + sqrt(1.0 + 4 * 0.024 * loss_W)) / 0.048)
-    assert "case 100.6 °C" in check.how
+    assert ", × (125.0 °C − 100.6 °C case)/(125.0 °C − 85.0 °C) = × 0.6096" in check.how
 
 
 def test_a_cooler_case_allows_no_more_than_the_rating():
@@ -191,6 +191,11 @@ def test_a_case_as_hot_as_the_junction_may_be_allows_nothing():
     check = judged(hot)["switch.I_TAV"]
     assert (check.verdict, check.headroom_pct, check.would_do) == ("undersized", None, None)
     assert check.reason == "the case is as hot as T_vj max"
+
+
+def test_a_hot_case_allows_nothing_to_a_device_without_threshold_either():
+    hot = changed(THYRISTOR, V_T0_V=0.0, Rth_ch_K_per_W=40.0)
+    assert judged(hot)["switch.I_TAV"].reason == "the case is as hot as T_vj max"
 
 
 def test_a_rated_case_above_the_highest_junction_temperature_is_no_rating():
@@ -446,3 +451,20 @@ def test_the_usual_test_condition_is_taken_where_none_was_entered():
     entered = judged(hot)["switch.I_TAV"]
     assumed = judged(changed(hot, I_TAV_case_C=None))["switch.I_TAV"]
     assert assumed.allowed == pytest.approx(entered.allowed)
+
+
+def test_energies_that_are_scaled_by_usual_exponents_leave_the_temperature_assumed():
+    assert judged(IGBT)["switch.Tvj"].basis == "assumed"
+    exponents = {
+        f"{stem}_{key}": 1.0
+        for stem in ("Eon", "Eoff")
+        for key in ("current_exponent", "voltage_exponent")
+    }
+    own = changed(IGBT, **exponents, Eon_per_K=0.003, Eoff_per_K=0.003)
+    assert judged(own)["switch.Tvj"].basis is None
+    assert judged(changed(own, E_Tvj_C=None))["switch.Tvj"].basis == "assumed"
+
+
+def test_exponents_of_an_energy_that_is_not_entered_are_not_assumed():
+    diode = changed(FREEWHEEL, Err_J=None, E_Tvj_C=None, Qrr_As=1e-4)
+    assert judged(diode=diode)["diode.Tvj"].basis is None
