@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from app.picture import Picture
-from app.verdict_sentence import rounded
+from app.widgets.strip_scale import in_figures
 from engine.ideal_figure import ideal_line_rms, ideal_phase_rms
 
 LEAST_DIFFERENCE = 0.005
@@ -25,6 +25,7 @@ def inductive_sentence(picture: Picture) -> str:
     if abs(rms_V[0] - ideal_V) <= LEAST_DIFFERENCE * ideal_V:
         return ""
     return (
-        f"{name} {rounded(rms_V[0], 'V')}, a resistive load's is {rounded(ideal_V, 'V')} "
-        f"({fraction:.3f} × {rounded(bridge.voltage_V, 'V')}): current flows on after gate-off."
+        f"{name} {in_figures(rms_V[0], 'V')}; with a resistive load {fraction:.3f} × "
+        f"{in_figures(bridge.voltage_V, 'V')} = {in_figures(ideal_V, 'V')}. "
+        "The inductive current flows on after gate-off."
     )

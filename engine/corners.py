@@ -41,8 +41,11 @@ class SolvedDuty:
     thermal: StressTable
 
 
+@lru_cache(maxsize=8)
 def solved(duty: Duty) -> SolvedDuty:
     """Solve the bridge once a frequency and lay out all corners.
+
+    Kept for the last few duties, so that an edit of a rating solves nothing anew.
 
     Raises
     ------

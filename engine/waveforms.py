@@ -163,8 +163,9 @@ def _position_voltages(bridge: Bridge, terminal: Array) -> Array:
 
 
 def _gate_edge_deg(bridge: Bridge, position: int, later_s: float) -> float:
-    period_s = bridge.period_s
-    return 360.0 * ((gate_on_s(bridge, position) + later_s) % period_s) / period_s
+    """Angle of an instant after a position's gate-on, in [0°, 360°)."""
+    angle = 360.0 * bridge.frequency_Hz * (gate_on_s(bridge, position) + later_s) % 360.0
+    return angle if angle < 360.0 - 1e-9 else 0.0
 
 
 def _conduction(stretches: tuple[Stretch, ...], edges_deg: list[float]) -> tuple[Conduction, ...]:

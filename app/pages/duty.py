@@ -24,7 +24,7 @@ from app.widgets.window_width import WindowWidth
 
 SIDE_FROM = 1100
 """Width of the window in px below which the right column hides."""
-SENTENCE_HEIGHT = 24
+SENTENCE_HEIGHT, EDGE = 24, 8
 
 
 class DutyPage(Page):
@@ -55,6 +55,8 @@ class DutyPage(Page):
         self._stale = True
         self.entries.show_problems(problems)
         self._show_stale()
+        if self._picture is None and problems:
+            self.strips.show_incomplete(f"No result: {problems[0].text}")
 
     def show_incomplete(self, missing: tuple[str, ...]) -> None:
         self._picture = None
@@ -125,12 +127,12 @@ class DutyPage(Page):
         self._sentence.setFont(font(TABLE))
         self._sentence.setFixedHeight(SENTENCE_HEIGHT)
         self._sentence.setProperty("role", "second")
+        self._sentence.setContentsMargins(14, 0, 0, 0)
         middle = QVBoxLayout()
         middle.setSpacing(0)
         middle.addWidget(self._sentence)
         middle.addWidget(self.strips, 1)
-        row = QHBoxLayout(self)
-        row.setContentsMargins(0, 0, 0, 0)
+        self._row = row = QHBoxLayout(self)
         row.setSpacing(0)
         row.addWidget(self.entries)
         row.addLayout(middle, 1)
@@ -143,4 +145,6 @@ class DutyPage(Page):
         self.strips.menu_asked.connect(lambda place: copy_menu(self.strips).exec(place))
 
     def resizeEvent(self, event: QResizeEvent) -> None:
-        self.side.setVisible(self.window().width() >= SIDE_FROM)
+        beside = self.window().width() >= SIDE_FROM
+        self.side.setVisible(beside)
+        self._row.setContentsMargins(0, 0, 0 if beside else EDGE, 0)

@@ -31,11 +31,15 @@ class DutySide(QWidget):
         self._lists.addWidget(self.positions)
         self._lists.addWidget(self.events)
         self._asked_for_list = False
-        self._column = QVBoxLayout(self)
-        self._column.setSpacing(4)
-        self._column.addWidget(self.drawing, 1)
-        self._column.addWidget(self.read_out)
-        self._column.addWidget(self._lists)
+        self._below = QVBoxLayout()
+        self._below.setSpacing(4)
+        self._below.addWidget(self.read_out)
+        self._below.addWidget(self._lists)
+        column = QVBoxLayout(self)
+        column.setContentsMargins(0, 4, 0, 8)
+        column.setSpacing(4)
+        column.addWidget(self.drawing, 1)
+        column.addLayout(self._below)
         self.drawing.position_asked.connect(self.position_asked)
         self.positions.position_asked.connect(self.position_asked)
         self.events.angle_asked.connect(strips.angle_cursor.move_to)
@@ -83,9 +87,10 @@ class DutySide(QWidget):
     def fit(self, narrow: bool) -> None:
         """Take the width for a narrow or a wide window."""
         self.setFixedWidth(NARROW_WIDTH if narrow else WIDTH)
-        side = 8 if narrow else 12
-        self._column.setContentsMargins(side, 4, side, 8)
+        side = 4 if narrow else 12
+        self._below.setContentsMargins(side, 0, side, 0)
         self.positions.put_diodes_together(narrow)
+        self.events.leave_out_voltage(narrow)
         self._arrange()
 
     def resizeEvent(self, event: QResizeEvent) -> None:

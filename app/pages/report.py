@@ -219,6 +219,7 @@ def _head(text: str) -> QLabel:
 
 def _scrolled(column: QWidget) -> QScrollArea:
     area = QScrollArea()
+    area.setAccessibleName("Entries of the report")
     area.setWidgetResizable(True)
     area.setFrameShape(QScrollArea.Shape.NoFrame)
     area.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)

@@ -39,6 +39,7 @@ from engine.ratings import Igbt
 
 IDLE, LIGHTEST, HEAVIEST = 1.0, 2.0, 4.0
 """Weight of a line without current, with the least, and with the highest of the period, in px."""
+TALLEST = 340
 TO_LEG = {Qt.Key.Key_Left: -1, Qt.Key.Key_Right: 1}
 MIDDLE = Qt.AlignmentFlag.AlignCenter
 
@@ -123,7 +124,12 @@ class BridgeDrawing(QWidget):
 
     @property
     def plan(self) -> BridgePlan:
-        return BridgePlan(float(self.width()), float(min(self.height(), 340)))
+        return BridgePlan(float(self.width()), float(min(self.height(), TALLEST)))
+
+    @property
+    def _offset(self) -> int:
+        """From the top of the widget to the drawing."""
+        return max(0, self.height() - TALLEST) // 2
 
     # Painting ---------------------------------------------------------------------------
 
@@ -131,7 +137,7 @@ class BridgeDrawing(QWidget):
         painter = QPainter(self)
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         plan = self.plan
-        painter.translate(0.0, (self.height() - plan.height) / 2.0)
+        painter.translate(0, self._offset)
         self._paint_rails(painter, plan)
         for leg in range(3):
             self._paint_leg(painter, plan, leg)
@@ -190,7 +196,7 @@ class BridgeDrawing(QWidget):
         self._paint_position(painter, plan, lower, plan.phase_y(leg), plan.bottom)
         x, y = plan.leg_x(leg), plan.phase_y(leg)
         self._pen(painter, self._currents.line[leg])
-        bend = plan.load_x - 8.0
+        bend = plan.load_x - 1.5
         draw_lines(
             painter,
             (x, y),
@@ -237,20 +243,23 @@ class BridgeDrawing(QWidget):
         return "igbt" if isinstance(chosen.switch, Igbt) else "thyristor"
 
     def _paint_label(self, painter: QPainter, plan: BridgePlan, position: int) -> None:
-        """Name and verdict mark at the left of a switch, a frame of the focus around both."""
+        """Name and verdict mark at the left of a switch; the one looked at is underlined."""
         look, room = theme(), plan.room(position)
-        at, diode = position == self.position, plan.centre(position)
-        painter.setFont(font(TABLE, bold=at))
-        name = QRectF(room.left(), room.top() + 2.0, 22.0, 16.0)
+        at, centre = position == self.position, plan.centre(position)
+        painter.setFont(font(AXIS if plan.is_narrow else TABLE, bold=at))
+        name = QRectF(room.left(), room.top() + 2.0, 16.0 if plan.is_narrow else 22.0, 16.0)
         self._words(painter, name, POSITIONS[position], look.ink if at else look.second_ink)
         if at:
             painter.setPen(line_pen(look.accent, 2.0 if self.hasFocus() else 1.0))
             draw_lines(painter, (name.left() + 2, name.bottom()), (name.right() - 2, name.bottom()))
-        mark = QRectF(room.left() + 3.0, room.top() + 22.0, SIZE, SIZE)
+        indent = 0.0 if plan.is_narrow else 3.0
+        mark = QRectF(room.left() + indent, room.top() + 20.0, SIZE, SIZE)
         draw_verdict_mark(painter, mark, self._verdicts[position])
         painter.setFont(font(AXIS))
-        beside = QRectF(plan.diode_x(LEG_OF_POSITION[position]) + 2.0, diode.y() + HALF, 18.0, 12.0)
-        self._words(painter, beside, f"D{position + 1}", look.second_ink)
+        above = QRectF(
+            plan.diode_x(LEG_OF_POSITION[position]) - 9.0, centre.y() - REACH - 13.0, 18.0, 12.0
+        )
+        self._words(painter, above, f"D{position + 1}", look.second_ink)
 
     def _paint_load(self, painter: QPainter, plan: BridgePlan) -> None:
         for leg in range(3):
@@ -264,11 +273,11 @@ class BridgeDrawing(QWidget):
         """The phase's letter, and an arrow where its current goes."""
         y, current = plan.terminal_y(leg), self._currents.line[leg]
         painter.setFont(font(TABLE, bold=True))
-        letter = QRectF(plan.load_x - 4.0, y - 19.0, 14.0, 16.0)
+        letter = QRectF(plan.load_x, y - 19.0, 14.0, 16.0)
         self._words(painter, letter, PHASES[leg], theme().phase[leg])
         if self._currents.part(current):
             painter.setPen(line_pen(theme().stale if self._stale else theme().ink, 1.5))
-            tip = plan.load_x + (8.0 if current > 0.0 else 0.0)
+            tip = plan.load_x + (10.0 if current > 0.0 else 4.0)
             draw_arrow(painter, QPointF(tip, y + 8.0), current > 0.0)
 
     def _branch(self, painter: QPainter, branch: int, start: QPointF, end: QPointF) -> None:
@@ -283,7 +292,7 @@ class BridgeDrawing(QWidget):
         )
 
     def _paint_star(self, painter: QPainter, plan: BridgePlan) -> None:
-        end = plan.width - 6.0
+        end = plan.width - 10.5
         for leg in range(3):
             y = plan.terminal_y(leg)
             self._branch(painter, leg, QPointF(plan.load_x + 4.0, y), QPointF(end, y))
@@ -293,7 +302,7 @@ class BridgeDrawing(QWidget):
         self._paint_dot(painter, end, plan.terminal_y(1))
 
     def _paint_delta(self, painter: QPainter, plan: BridgePlan) -> None:
-        near, far = plan.load_x + (18.0 if plan.is_narrow else 30.0), plan.width - 8.0
+        near, far = plan.load_x + (18.5 if plan.is_narrow else 30.5), plan.width - 12.5
         ys = [plan.terminal_y(leg) for leg in range(3)]
         for leg in range(3):
             self._pen(painter, self._currents.line[leg])
@@ -323,8 +332,7 @@ class BridgeDrawing(QWidget):
             super().keyPressEvent(event)
 
     def _position_at(self, point: QPointF) -> int | None:
-        plan = self.plan
-        return plan.position_at(point - QPointF(0.0, (self.height() - plan.height) / 2.0))
+        return self.plan.position_at(point - QPointF(0.0, self._offset))
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
         position = self._position_at(event.position())

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from math import floor
 
 from PySide6.QtCore import QPointF, QRectF
 
@@ -30,24 +31,24 @@ class BridgePlan:
 
     @property
     def top(self) -> float:
-        return MARGIN
+        return _crisp(MARGIN)
 
     @property
     def bottom(self) -> float:
-        return self.height - MARGIN
+        return _crisp(self.height - MARGIN)
 
     @property
     def middle(self) -> float:
-        return self.height / 2.0
+        return _crisp(self.height / 2.0)
 
     @property
     def link_x(self) -> float:
-        return 12.0
+        return 14.5
 
     @property
     def load_x(self) -> float:
         """Where the lines of the phases leave the legs and spread to the load."""
-        return self.width - (58.0 if self.is_narrow else 80.0)
+        return self.width - (60.0 if self.is_narrow else 88.0)
 
     @property
     def diode_apart(self) -> float:
@@ -55,8 +56,9 @@ class BridgePlan:
 
     def leg_x(self, leg: int) -> float:
         """The switches of a leg."""
-        pitch = (self.load_x - self.link_x - 14.0) / 3.0
-        return self.link_x + 14.0 + (leg + 1) * pitch - self.diode_apart - HALF - 6.0
+        pitch = (self.load_x - self.link_x - 12.0) / 3.0
+        right = self.link_x + 12.0 + (leg + 1) * pitch
+        return _crisp(right - self.diode_apart - HALF - 6.0)
 
     def diode_x(self, leg: int) -> float:
         return self.leg_x(leg) + self.diode_apart
@@ -67,13 +69,13 @@ class BridgePlan:
 
     def terminal_y(self, leg: int) -> float:
         """A phase's line at the load."""
-        return self.middle + (leg - 1) * min(0.2 * self.height, 56.0)
+        return self.middle + (leg - 1) * min(round(0.2 * self.height), 56)
 
     def centre(self, position: int) -> QPointF:
         """The middle of a position's switch."""
         edge = PHASE_APART + 2.0
         upper = (self.top + self.middle - edge) / 2.0
-        y = upper if UPPER[position] else self.height - upper
+        y = _crisp(upper if UPPER[position] else self.height - upper)
         return QPointF(self.leg_x(LEG_OF_POSITION[position]), y)
 
     def room(self, position: int) -> QRectF:
@@ -85,6 +87,11 @@ class BridgePlan:
     def position_at(self, point: QPointF) -> int | None:
         found = (n for n in range(6) if self.room(n).contains(point))
         return next(found, None)
+
+
+def _crisp(place: float) -> float:
+    """The middle of a pixel, where a thin line is sharp."""
+    return floor(place) + 0.5
 
 
 @dataclass(frozen=True, slots=True)

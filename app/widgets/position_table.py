@@ -7,15 +7,32 @@ from collections.abc import Iterable, Sequence
 from PySide6.QtCore import Qt, Signal
 from PySide6.QtWidgets import QHeaderView
 
-from app.verdict_sentence import rounded
+from app.theme import AXIS
 from app.widgets.plain_table import PlainTable
+from app.widgets.strip_scale import in_figures
 from engine.bridge import POSITIONS
 from engine.stress import BridgeStress, DiodeStress, PositionStress, SwitchingEvent, SwitchStress
 
-ROW_HEIGHT = 18
+ROW_HEIGHT, HEAD_HEIGHT = 18, 20
+NAME_WIDTH = 40
+EVENT_WIDTHS = {0: 46, 1: 25, 3: 47, 4: 46}
+DENSE = (
+    "QTableView { background: transparent; } QTableView::item { padding: 0 1px; }"
+    f"QHeaderView::section {{ padding: 0; font-size: {AXIS}px; }}"
+)
 POSITION_HEADS = ("", "avg A", "rms A", "peak A", "block V")
-EVENT_HEADS = ("angle", "", "change", "current", "voltage")
+EVENT_HEADS = ("angle °", "", "change", "current", "voltage")
 Row = tuple[str, ...]
+
+
+def _make_dense(table: PlainTable) -> None:
+    """Rows and columns as narrow as their text lets them be."""
+    table.setStyleSheet(DENSE)
+    table.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+    table.verticalHeader().setMinimumSectionSize(ROW_HEIGHT)
+    table.verticalHeader().setDefaultSectionSize(ROW_HEIGHT)
+    table.horizontalHeader().setMinimumSectionSize(20)
+    table.horizontalHeader().setFixedHeight(HEAD_HEIGHT)
 
 
 class PositionTable(PlainTable):
@@ -25,11 +42,12 @@ class PositionTable(PlainTable):
 
     def __init__(self) -> None:
         super().__init__("All positions", POSITION_HEADS, range(1, 5), ROW_HEIGHT)
+        _make_dense(self)
         head = self.horizontalHeader()
         head.setSectionResizeMode(QHeaderView.ResizeMode.Stretch)
-        head.setMinimumSectionSize(20)
-        head.setFixedHeight(ROW_HEIGHT + 2)
-        self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        head.setSectionResizeMode(0, QHeaderView.ResizeMode.Fixed)
+        head.resizeSection(0, NAME_WIDTH)
+        self.setVerticalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self._diodes_together = False
         self._stress: BridgeStress | None = None
         self._position = 0
@@ -51,7 +69,7 @@ class PositionTable(PlainTable):
 
     @property
     def wanted_height(self) -> int:
-        return (ROW_HEIGHT + 2) + (7 if self._diodes_together else 12) * ROW_HEIGHT + 2
+        return HEAD_HEIGHT + (7 if self._diodes_together else 12) * ROW_HEIGHT + 4
 
     def rows(self) -> list[Row]:
         if self._stress is None:
@@ -60,7 +78,7 @@ class PositionTable(PlainTable):
         switches = [_switch_row(each) for each in positions]
         diodes = [each.diode for each in positions]
         if self._diodes_together:
-            return [*switches, _row("D1–D6", *map(max, zip(*map(_figures, diodes), strict=True)))]
+            return [*switches, _row("D1–6", *map(max, zip(*map(_figures, diodes), strict=True)))]
         return [*switches, *(_row(f"D{n}", *_figures(one)) for n, one in enumerate(diodes, 1))]
 
 
@@ -95,16 +113,20 @@ class EventTable(PlainTable):
 
     def __init__(self) -> None:
         super().__init__("Events of the period", EVENT_HEADS, (0, 3, 4), ROW_HEIGHT)
+        _make_dense(self)
         head = self.horizontalHeader()
-        head.setSectionResizeMode(QHeaderView.ResizeMode.ResizeToContents)
+        head.setSectionResizeMode(QHeaderView.ResizeMode.Fixed)
         head.setSectionResizeMode(2, QHeaderView.ResizeMode.Stretch)
-        head.setMinimumSectionSize(20)
-        head.setFixedHeight(ROW_HEIGHT + 2)
-        self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        for column, width in EVENT_WIDTHS.items():
+            head.resizeSection(column, width)
         self._events: Sequence[SwitchingEvent] = ()
         self.cellClicked.connect(self._ask)
         self.cellActivated.connect(self._ask)
         self.currentCellChanged.connect(lambda row, *_: self._ask(row))
+
+    def leave_out_voltage(self, leave_out: bool) -> None:
+        """Where the column is narrow."""
+        self.setColumnHidden(len(EVENT_HEADS) - 1, leave_out)
 
     def show_events(self, events: Iterable[SwitchingEvent]) -> None:
         self._events = ()
@@ -120,9 +142,9 @@ def event_row(event: SwitchingEvent) -> Row:
     """Angle, device, what happens, current and voltage."""
     number = POSITIONS.index(event.position) + 1
     return (
-        f"{event.angle_deg:.1f}°",
+        f"{event.angle_deg:.1f}",
         event.position if event.device == "switch" else f"D{number}",
         event.kind,
-        rounded(event.current_A, "A"),
-        rounded(event.voltage_V, "V"),
+        in_figures(event.current_A, "A"),
+        in_figures(event.voltage_V, "V"),
     )

@@ -10,10 +10,11 @@ from PySide6.QtWidgets import QSizePolicy, QWidget
 
 from app.theme import AXIS, TABLE, font, theme, theme_signals
 from app.widgets.strip import GATES, POSITION, STRIPS, Curve, Strip, value_at
-from app.widgets.strip_scale import figures_for
+from app.widgets.strip_scale import Figures, figures_for
 from app.widgets.strips import Strips
 
 ROW, HEAD = 17, 20
+NARROW_BELOW = 260
 LEFT = Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignVCenter
 RIGHT = Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter
 
@@ -58,23 +59,33 @@ class ReadOut(QWidget):
         painter.drawText(room, RIGHT, self._strips.conducting_at_cursor())
 
     def _paint_row(self, painter: QPainter, top: float, strip: Strip) -> None:
-        """The strip's short name, then its curves in three columns."""
-        name_width = 40.0 if self.width() < 260 else 62.0
+        """The strip's short name and its units, then its curves in three columns."""
+        narrow = self.width() < NARROW_BELOW
+        name_width = 36.0 if narrow else 64.0
         column = (self.width() - name_width) / 3.0
         painter.setFont(font(AXIS))
         painter.setPen(theme().second_ink)
-        painter.drawText(QRectF(0, top, name_width, ROW), LEFT, _short_name(strip, name_width))
+        name = QRectF(0, top, name_width, ROW)
+        painter.drawText(name, LEFT, self._row_name(strip, narrow))
         for number, (curve, text) in enumerate(self._cells(strip)):
-            room = QRectF(name_width + number * column + 6.0, top, column - 6.0, ROW)
-            self._paint_cell(painter, room, curve, text)
+            room = QRectF(name_width + number * column, top, column, ROW)
+            self._paint_cell(painter, room.adjusted(4.0 if narrow else 12.0, 0, 0, 0), curve, text)
+
+    def _row_name(self, strip: Strip, narrow: bool) -> str:
+        """'Line V', 'T1 A A V'; on a narrow column the units alone."""
+        units = [figures.unit for _, figures in self._figures(strip)]
+        shown = units[0] if len(set(units)) == 1 else " ".join(units)
+        return shown if narrow else f"{_short_name(strip)} {shown}"
+
+    def _figures(self, strip: Strip) -> Iterator[tuple[Curve, Figures]]:
+        for lane, scale in zip(strip.lanes, self._strips.sheet.scales[strip.key], strict=True):
+            for curve in lane.curves:
+                yield curve, figures_for(scale, lane.unit)
 
     def _cells(self, strip: Strip) -> Iterator[tuple[Curve, str]]:
         sheet, at_deg = self._strips.sheet, self._strips.angle_cursor.angle_deg
-        for lane, scale in zip(strip.lanes, sheet.scales[strip.key], strict=True):
-            figures = figures_for(scale, lane.unit)
-            for curve in lane.curves:
-                value = figures.of(value_at(sheet.angle_deg, curve.values, at_deg))
-                yield curve, f"{value} {figures.unit}"
+        for curve, figures in self._figures(strip):
+            yield curve, figures.of(value_at(sheet.angle_deg, curve.values, at_deg))
 
     def _paint_cell(self, painter: QPainter, room: QRectF, curve: Curve, text: str) -> None:
         sheet = self._strips.sheet
@@ -84,7 +95,6 @@ class ReadOut(QWidget):
         painter.drawText(room, RIGHT, text)
 
 
-def _short_name(strip: Strip, width: float) -> str:
-    if width < 60.0:
-        return ""
+def _short_name(strip: Strip) -> str:
+    """'Line' of 'Line voltages', 'T1' of 'Position T1'."""
     return strip.title.split()[-1 if strip.key == POSITION else 0]

@@ -9,7 +9,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from app.verdict_sentence import rounded
+from app.widgets.strip_scale import in_figures
 from engine.bridge import PHASES, POSITIONS
 from engine.stress import BridgeStress
 from engine.waveforms import Waveforms
@@ -68,9 +68,9 @@ class Strip:
     def values_in_words(self, angle_deg: Array, cursor_deg: float) -> str:
         """'AB 540 V  BC −540 V  CA 0 V' at the cursor."""
         return "  ".join(
-            f"{curve.name} {rounded(value_at(angle_deg, curve.values, cursor_deg), lane.unit)}"
+            f"{curve.name} {in_figures(value_at(angle_deg, curve.values, cursor_deg), lane.unit)}"
             for lane, curve in self.curves()
-        ).replace("-", "−")
+        )
 
 
 EMPTY = tuple(Strip(key, key.capitalize(), ()) for key in STRIPS)
@@ -173,7 +173,7 @@ def _position_figures(position: int, stress: BridgeStress | None) -> str:
     if stress is None:
         return ""
     switch = stress.positions[position].switch
-    blocks = rounded(max(switch.forward_blocking_peak_V, switch.reverse_blocking_peak_V), "V")
+    blocks = in_figures(max(switch.forward_blocking_peak_V, switch.reverse_blocking_peak_V), "V")
     return f"{_figures([switch.current_rms_A], [switch.current_peak_A], 'A')}   blocks {blocks}"
 
 
@@ -196,5 +196,5 @@ def _figures(rms: Sequence[float] | None, peaks: Sequence[float], unit: str) -> 
 
 def _together(values: Sequence[float], unit: str) -> str:
     """One figure where all print alike, else all of them."""
-    texts = [rounded(value, unit) for value in values]
+    texts = [in_figures(value, unit) for value in values]
     return texts[0] if len(set(texts)) == 1 else " / ".join(texts)

@@ -12,13 +12,12 @@ from PySide6.QtSvg import QSvgGenerator
 
 from app.export import table_bytes
 from app.theme import LIGHT, Theme
-from app.widgets.strip import POSITION, STRIPS, Connection, Strip, strips_of
+from app.widgets.strip import STRIPS, Connection, Strip, strips_of
 from app.widgets.strip_labels import (
     end_labels,
     paint_angles,
     paint_conduction,
     paint_heading,
-    paint_interval_names,
     paint_names,
 )
 from app.widgets.strip_layout import StripLayout, lay_out
@@ -112,8 +111,6 @@ def paint_strips(
         room = layout.rooms[strip.key]
         paint_strip(painter, sheet, strip, room)
         paint_heading(painter, sheet, strip, room)
-        if strip.key == POSITION and room.plot is not None:
-            paint_interval_names(painter, sheet, strip, room)
         if room.plot is not None:
             paint_names(painter, sheet, end_labels(sheet, strip, room.plot))
     paint_angles(painter, sheet, layout.foot)

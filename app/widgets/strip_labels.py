@@ -5,11 +5,11 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from PySide6.QtCore import QPointF, QRectF, Qt
+from PySide6.QtCore import QPointF, QRectF, QSizeF, Qt
 from PySide6.QtGui import QFontMetricsF, QPainter, QPolygonF
 
 from app.theme import AXIS, font, line_pen
-from app.widgets.strip import GATES, Curve, Strip, value_at
+from app.widgets.strip import GATES, POSITION, Curve, Strip, value_at
 from app.widgets.strip_layout import FOLDED, HEADING, StripRoom
 from app.widgets.strip_painting import TEXT_ROW, Sheet, fill_interval, lane_rooms, y_of
 from app.widgets.strip_scale import Figures, figures_for
@@ -18,8 +18,10 @@ LEFT = Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignVCenter
 RIGHT = Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter
 MIDDLE = Qt.AlignmentFlag.AlignCenter
 
-LEADER, SAMPLE = 8.0, 18.0
+LEADER, SAMPLE, WORDS_APART = 8.0, 18.0, 12.0
 NO_LENGTH_DEG = 0.05
+BESIDE_PLOT = 50.0
+"""What triangle and name need side by side where they stand beside the plot, not above it."""
 
 
 def paint_heading(
@@ -27,45 +29,58 @@ def paint_heading(
 ) -> None:
     """Triangle, name, rms and peak; 'stale' where the curves are older than the entries.
 
-    `accent` marks the strip that the keyboard works on.
+    `accent` marks the strip that the keyboard works on. On the strip of the position looked at
+    the intervals are named at the right.
     """
-    look, folded = sheet.look, room.plot is None
-    line = QRectF(room.whole.left(), room.whole.top(), room.whole.width(), HEADING)
-    if folded:
-        line.setHeight(FOLDED)
+    folded = room.plot is None
+    line = QRectF(room.whole.topLeft(), QSizeF(room.whole.width(), FOLDED if folded else HEADING))
+    look = sheet.look
     painter.setPen(look.accent if accent else look.stale if sheet.stale else look.ink)
     _paint_triangle(painter, line, folded)
+    beside_plot = strip.key == GATES and not folded
+    if beside_plot and sheet.axis.left < BESIDE_PLOT:
+        line.translate(-12.0, HEADING - 4.0)
+    line.setLeft(_paint_title(painter, line, strip.title, accent))
+    painter.setFont(font(AXIS))
+    painter.setPen(look.stale if sheet.stale else look.second_ink)
+    if beside_plot:
+        line.translate(14.0 - line.left(), HEADING)
+    line.setLeft(_paint_words(painter, line, "stale" if sheet.stale else ""))
+    line.setLeft(_paint_words(painter, line, strip.figures))
+    if strip.key == POSITION and not folded:
+        _paint_interval_names(painter, sheet, line)
+
+
+def _paint_title(painter: QPainter, line: QRectF, title: str, accent: bool) -> float:
+    """Returns where the words after it begin."""
     painter.setFont(font(AXIS, bold=True))
     name = line.adjusted(14.0, 0.0, 0.0, 0.0)
-    width = painter.fontMetrics().horizontalAdvance(strip.title)
+    width = painter.fontMetrics().horizontalAdvance(title)
     if accent:
         painter.drawLine(name.bottomLeft(), name.bottomLeft() + QPointF(width, 0.0))
-    painter.drawText(name, LEFT, strip.title)
-    left = name.left() + width + 12.0
-    painter.setFont(font(AXIS))
-    if sheet.stale:
-        painter.setPen(look.stale)
-        painter.drawText(QRectF(left, line.top(), 60.0, line.height()), LEFT, "stale")
-        left += 44.0
-    painter.setPen(look.stale if sheet.stale else look.second_ink)
-    painter.drawText(
-        QRectF(left, line.top(), line.right() - left, line.height()), LEFT, strip.figures
-    )
+    painter.drawText(name, LEFT, title)
+    return name.left() + width + WORDS_APART
 
 
-def paint_interval_names(painter: QPainter, sheet: Sheet, strip: Strip, room: StripRoom) -> None:
-    """Names and lengths of the intervals in the heading, each beside a sample of its filling."""
-    painter.setFont(font(AXIS))
+def _paint_words(painter: QPainter, line: QRectF, text: str) -> float:
+    """Returns where the next words begin."""
+    if not text:
+        return line.left()
+    painter.drawText(line, LEFT, text)
+    return line.left() + painter.fontMetrics().horizontalAdvance(text) + WORDS_APART
+
+
+def _paint_interval_names(painter: QPainter, sheet: Sheet, line: QRectF) -> None:
+    """Names and lengths of the intervals, each beside a sample of its filling, where they fit."""
     metrics = painter.fontMetrics()
-    left_end = 30.0 + metrics.horizontalAdvance(f"{strip.title}{strip.figures}") * 1.1
     right = sheet.axis.right
     for interval in reversed(sheet.intervals):
         length_deg = interval.end_deg - interval.start_deg
         text = f"{interval.name} {length_deg:.1f}°"
         left = right - metrics.horizontalAdvance(text) - SAMPLE - 4.0
-        if length_deg < NO_LENGTH_DEG or left < left_end:
+        if length_deg < NO_LENGTH_DEG or left < line.left():
             continue
-        top = room.whole.top() + 3.0
+        top = line.top() + 3.0
         fill_interval(painter, sheet, QRectF(left, top, SAMPLE, HEADING - 6.0), interval.name)
         painter.setPen(sheet.look.stale if sheet.stale else sheet.look.second_ink)
         painter.drawText(QRectF(left + SAMPLE + 4.0, top - 3.0, 120.0, HEADING), LEFT, text)

@@ -175,7 +175,7 @@ def _paint_scale(
 ) -> None:
     """Round figures at the left; the unit stands with the uppermost."""
     low_lane = room.height() < LOW_LANE
-    marks = [0.0, roundest(scale)] if low_lane else ticks(scale, room.height(), 1.7 * TEXT_ROW)
+    marks = [0.0, roundest(scale)] if low_lane else ticks(scale, room.height(), 1.4 * TEXT_ROW)
     painter.setFont(font(AXIS))
     painter.setPen(sheet.look.second_ink)
     for value in marks:

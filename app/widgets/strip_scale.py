@@ -80,6 +80,13 @@ class Figures:
         return f"{value / self.factor:.6g}".replace("-", "−")
 
 
+def in_figures(value: float, unit: str) -> str:
+    """A quantity in three figures, noughts at the end kept: '21.0 A'."""
+    printed, prefixed = number_shown(value, unit)
+    factor = value / float(printed) if value else 1.0
+    return f"{Figures(prefixed, factor).of(value)} {prefixed}"
+
+
 @lru_cache(maxsize=64)
 def figures_for(scale: Scale, unit: str) -> Figures:
     """The prefix that suits the largest value of the scale."""

@@ -27,9 +27,8 @@ from PySide6.QtWidgets import QSizePolicy, QWidget
 
 from app.picture import Picture
 from app.theme import AXIS, TABLE, cursor_pen, font, theme, theme_signals
-from app.verdict_sentence import rounded
 from app.widgets.cursor import LONG_STEP_DEG, STEP_DEG, AngleCursor
-from app.widgets.strip import EMPTY, GATES, POSITION, Strip, strips_of
+from app.widgets.strip import EMPTY, GATES, Strip, strips_of
 from app.widgets.strip_export import paint_strips
 from app.widgets.strip_labels import (
     MIDDLE,
@@ -38,11 +37,11 @@ from app.widgets.strip_labels import (
     end_labels,
     fits,
     paint_heading,
-    paint_interval_names,
     paint_values,
 )
 from app.widgets.strip_layout import FOLDED, HEADING, MARGINS, StripLayout, lay_out
 from app.widgets.strip_painting import Sheet
+from app.widgets.strip_scale import in_figures
 from app.widgets.strip_sheet import Scales, conduction_parts, intervals_of, scales_of
 
 Key, Modifier = Qt.Key, Qt.KeyboardModifier
@@ -166,7 +165,7 @@ class Strips(QWidget):
         if self._picture is None:
             return f"{angle_deg:.1f}°"
         time_s = angle_deg / 360.0 / self._picture.corner.frequency_Hz
-        return f"{angle_deg:.1f}°  {rounded(time_s, 's')}"
+        return f"{angle_deg:.1f}°  {in_figures(time_s, 's')}"
 
     # Places -----------------------------------------------------------------------------
 
@@ -225,15 +224,13 @@ class Strips(QWidget):
             heading.setWidth(self.width())
         painter.fillRect(heading, theme().ground)
         paint_heading(painter, self._sheet, strip, room, accent=True)
-        if strip.key == POSITION and room.plot is not None:
-            paint_interval_names(painter, self._sheet, strip, room)
 
     def _paint_needs(self, painter: QPainter) -> None:
         painter.setFont(font(TABLE))
-        middle = QPointF(self._layout.axis.x(180.0), self.height() / 2)
-        width = painter.fontMetrics().horizontalAdvance(self._needs) + 24
-        room = QRectF(middle.x() - width / 2, middle.y() - 16, width, 32)
-        painter.fillRect(room, theme().panel)
+        plots = [room.plot for room in self._layout.rooms.values() if room.plot is not None]
+        room = QRectF(0, 0, painter.fontMetrics().horizontalAdvance(self._needs) + 24, 32)
+        room.moveCenter(plots[len(plots) // 2].center())
+        painter.fillRect(room, theme().ground)
         painter.setPen(theme().ink)
         painter.drawText(room, MIDDLE, self._needs)
 

@@ -30,6 +30,7 @@ def dead_interval(case: Case, row: Row) -> Finding:
     needed_s, needed_in_words = _needed_tq(case)
     there_s = table.turn_off_time_s
     multiple = needed_s / row.compared(case)
+    without = bool((table.forced & (table.dead_interval_s <= 0.0)).any())
 
     def how(place: Place) -> str:
         if table.natural[place.point, place.position]:
@@ -54,7 +55,9 @@ def dead_interval(case: Case, row: Row) -> Finding:
         rating_for=lambda target, place: target / multiple,
         at_least=True,
         ambient="high",
-        nothing_allowed="no time is left to turn off",
+        nothing_allowed="the dead interval is zero"
+        if without
+        else "forward voltage returns at once",
     )
 
 

@@ -7,10 +7,12 @@ drops, which the solved bridge leaves out, are taken off the link voltage: two d
 from __future__ import annotations
 
 from collections.abc import Callable
+from functools import lru_cache
 
 import numpy as np
 
 from engine.bridge import POSITIONS
+from engine.corners import SolvedDuty
 from engine.latching import least_current_after, time_to_reach
 from engine.ratings import Thyristor
 from engine.selection import GatePulse
@@ -81,7 +83,7 @@ def latching(case: Case, row: Row) -> Finding:
 def holding(case: Case, row: Row) -> Finding:
     """I_H against the smallest current from the end of the gate pulse to a forced turn-off."""
     table = case.solved.lightest
-    there_A = _least_after_pulse(case) * _current_share(case)
+    there_A = _least_after_pulse(case.solved) * _current_share(case)
     there_A[~table.forced] = np.nan
     if np.isnan(there_A).all():
         return Open("does not apply: no position turns off forced")
@@ -104,9 +106,10 @@ def holding(case: Case, row: Row) -> Finding:
     )
 
 
-def _least_after_pulse(case: Case) -> Array:
+@lru_cache(maxsize=8)
+def _least_after_pulse(solved: SolvedDuty) -> Array:
     """Smallest current from the pulse's end to gate-off at the points of `states`, in A."""
-    pulse, table = case.solved.duty.pulse, case.solved.base
+    pulse, table = solved.duty.pulse, solved.base
     width_s = _pulse_width(pulse)
     if np.isinf(width_s):
         return table.gate_off_A
@@ -114,7 +117,7 @@ def _least_after_pulse(case: Case) -> Array:
     begins_s = table.turn_on_delay_s if pulse.form == "train" else 0.0 * table.dead_interval_s
     ends_s = begins_s + width_s
     least = _for_each(
-        case,
+        solved,
         lambda state, point, position: least_current_after(
             state, position, ends_s[point, position]
         ),
@@ -168,15 +171,15 @@ def _time_to_latch(case: Case, latching_A: float) -> Array:
     if share == 0.0:
         return np.full((len(case.solved.states), 6), np.inf)
     return _for_each(
-        case,
+        case.solved,
         lambda state, _, position: time_to_reach(state, position, latching_A / share),
     )
 
 
-def _for_each(case: Case, of: Callable[[SteadyState, int, int], float | None]) -> Array:
+def _for_each(solved: SolvedDuty, of: Callable[[SteadyState, int, int], float | None]) -> Array:
     """A figure of every state and position, ∞ where there is none."""
     found = [
         [of(state, point, position) for position in range(len(POSITIONS))]
-        for point, state in enumerate(case.solved.states.values())
+        for point, state in enumerate(solved.states.values())
     ]
     return np.array([[np.inf if one is None else one for one in row] for row in found])

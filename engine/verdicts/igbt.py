@@ -130,7 +130,7 @@ def blanking(case: Case, row: Row) -> Finding:
         how=how,
         rating_for=rating_for,
         at_least=True,
-        nothing_allowed="there is no dead interval",
+        nothing_allowed="the dead interval is zero",
     )
 
 

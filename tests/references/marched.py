@@ -176,7 +176,7 @@ class March:
                 state,
                 method="LSODA",
                 rtol=self.rtol,
-                atol=self.rtol * 1e-2 * self.scale_A,
+                atol=self.rtol * (1e-2 if measured else 1.0) * self.scale_A,
                 events=events,
             )
             currents = solution.y[:3, -1]

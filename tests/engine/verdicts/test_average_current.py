@@ -51,4 +51,5 @@ def test_the_share_of_the_rated_loss_falls_from_the_rated_case_to_the_junctions_
 
 
 def test_a_device_without_current_has_the_form_factor_of_direct_current():
-    assert form_factor(np.array([0.0, 2.0]), np.array([0.0, 3.0])).tolist() == [1.0, 1.5]
+    found = form_factor(np.array([0.0, 2.0, 0.5]), np.array([0.0, 3.0, 1.0]))
+    assert found.tolist() == [1.0, 1.5, 2.0]

@@ -302,7 +302,14 @@ def test_natural_turn_off_is_tested_against_the_time_the_diode_holds():
 def test_without_a_dead_interval_nothing_turns_off():
     check = judged(made=stress({"T3": {"dead_interval_s": 0.0}}))["switch.tq_dead"]
     assert (check.verdict, check.headroom_pct, check.position) == ("undersized", None, "T3")
-    assert check.reason == "no time is left to turn off"
+    assert check.reason == "the dead interval is zero"
+
+
+def test_a_diode_that_does_not_hold_leaves_no_time_either():
+    natural = {"turn_off": "natural", "forward_reapplied_s": 0.0, "dead_interval_s": 0.0}
+    check = judged(made=stress({"T3": natural}))["switch.tq_dead"]
+    assert (check.verdict, check.position) == ("undersized", "T3")
+    assert check.reason == "forward voltage returns at once"
 
 
 def test_an_idle_bridge_has_nothing_to_turn_off():
@@ -324,7 +331,7 @@ def test_without_a_dead_interval_no_delay_would_do():
     none = {f"T{n}": {"dead_interval_s": 0.0} for n in range(1, 7)}
     check = judged(IGBT, made=stress(none))["switch.blanking"]
     assert (check.verdict, check.would_do) == ("undersized", None)
-    assert check.reason == "there is no dead interval"
+    assert check.reason == "the dead interval is zero"
 
 
 # Temperature ------------------------------------------------------------------------------
