@@ -11,6 +11,7 @@ from PySide6.QtCore import QObject, Qt, Signal
 
 from app.dialogs import Dialogs
 from app.picture import Picture
+from app.report.options import ReportOptions
 from app.safe_write import write_atomically
 
 PDF = "PDF (*.pdf)"
@@ -31,11 +32,11 @@ class Exports(QObject):
         self._executor = ThreadPoolExecutor(1, thread_name_prefix="export")
         self._ended.connect(self._on_ended, Qt.ConnectionType.QueuedConnection)
 
-    def report(self, picture: Picture, name: str, paper: str) -> None:
+    def report(self, picture: Picture, name: str, options: ReportOptions) -> None:
         path = self._dialogs.file_to_save(Path(f"{name}.pdf"), PDF)
         if path is not None:
             path = path if path.suffix else path.with_suffix(".pdf")
-            self._start(path, lambda: _write_report(picture, path, paper))
+            self._start(path, lambda: _write_report(picture, path, options))
 
     def tables(self, picture: Picture) -> None:
         folder = self._dialogs.folder_for_tables()
@@ -69,11 +70,10 @@ class Exports(QObject):
             self.written.emit(path)
 
 
-def _write_report(picture: Picture, path: Path, paper: str) -> None:
-    from app.report.pdf import paper_size, report_pdf
+def _write_report(picture: Picture, path: Path, options: ReportOptions) -> None:
+    from app.report.pdf import report_pdf
 
-    data = report_pdf(picture.selection, picture.assessment, paper_size(paper))
-    write_atomically(path, data)
+    write_atomically(path, report_pdf(picture.selection, picture.assessment, options))
 
 
 def _write_tables(picture: Picture, folder: Path) -> None:

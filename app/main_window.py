@@ -39,6 +39,7 @@ from app.pages.page import Page
 from app.panes import UndoKeysForDocument, focus_into, focus_next_pane
 from app.picture import picture_of
 from app.rail import Rail
+from app.report.options import ReportOptions
 from app.settings import Settings
 from app.theme import ThemeChoice, apply_theme
 from app.verdict_line import VerdictLine
@@ -161,10 +162,10 @@ class MainWindow(QMainWindow):
         else:
             self.current_page.copy()
 
-    def export_report(self, paper: str = "A4") -> None:
+    def export_report(self, options: ReportOptions | None = None) -> None:
         picture = self.results.standing.picture
         if picture is not None:
-            self.exports.report(picture, self.files.name, paper)
+            self.exports.report(picture, self.files.name, options or ReportOptions())
 
     def export_tables(self) -> None:
         picture = self.results.standing.picture

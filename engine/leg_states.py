@@ -8,8 +8,7 @@ complementarity problem. It is found as the state of least violation a moment af
 
 from __future__ import annotations
 
-from collections.abc import Iterable
-from itertools import product
+from math import pi
 
 from engine.bridge import Bridge
 from engine.duty import Triple
@@ -17,15 +16,29 @@ from engine.load_network import dot, line_forms
 from engine.pieces import Legs, Piece, circuit_of, piece_from, terminal_voltages
 from engine.roots import value
 
-_MOMENT = 1e-9  # of a period
+_MOMENT = 1e-9  # of a period, but
+_FAST = 1e-3  # of the shortest time constant, if that is less
 _NOTHING = 1e-11  # a violation below this is rounding
 _FLOWS = 1e-9  # of the scale of currents: above this an inductive current is sure to flow
 
 
 def current_scale_A(bridge: Bridge) -> float:
-    """A current of the order of those that flow, to measure small ones against."""
-    omega = 6.283185307179586 * bridge.frequency_Hz
-    return bridge.voltage_V / (sum(bridge.resistance_ohm) + omega * sum(bridge.inductance_H))
+    """A current of the order of the largest that flows, to measure small ones against.
+
+    The link voltage over the least impedance between two terminals: one branch of a delta,
+    two in series of a star.
+    """
+    first, second, _ = sorted(impedances_ohm(bridge))
+    return bridge.voltage_V / (first + second if bridge.connection == "star" else first)
+
+
+def impedances_ohm(bridge: Bridge) -> Triple:
+    """R + ωL of the branches at the output frequency."""
+    omega = 2.0 * pi * bridge.frequency_Hz
+    a, b, c = (
+        R + omega * L for R, L in zip(bridge.resistance_ohm, bridge.inductance_H, strict=True)
+    )
+    return a, b, c
 
 
 def consistent_piece(
@@ -36,7 +49,7 @@ def consistent_piece(
     Among equals a leg without current is open rather than at a rail, and the `last` state is
     kept; with `left` that one has just come to its end and is not taken.
     """
-    states = list(_candidates(bridge, gates, currents))
+    states = _candidates(bridge, gates, currents)
     if len(states) > 1:
         states.sort(key=lambda legs: (-legs.count(0), legs != last))
         if left and last in states:
@@ -54,9 +67,9 @@ def consistent_piece(
     return best
 
 
-def _candidates(bridge: Bridge, gates: Legs, currents: Triple) -> Iterable[Legs]:
+def _candidates(bridge: Bridge, gates: Legs, currents: Triple) -> list[Legs]:
     if not bridge.feedback_diodes or all(gates):
-        return (gates,)
+        return [gates]
     flows = _FLOWS * current_scale_A(bridge)
     choices: list[tuple[int, ...]] = []
     for gate, row in zip(gates, line_forms(bridge.connection), strict=True):
@@ -67,7 +80,7 @@ def _candidates(bridge: Bridge, gates: Legs, currents: Triple) -> Iterable[Legs]
             choices.append((-1,) if current > 0.0 else (1,))
         else:
             choices.append((1, -1, 0))
-    return product(*choices)  # type: ignore[return-value]
+    return [(a, b, c) for a in choices[0] for b in choices[1] for c in choices[2]]
 
 
 def _cannot_jump(bridge: Bridge, row: Triple) -> bool:
@@ -80,7 +93,8 @@ def _violation(piece: Piece, before: Triple) -> float:
     bridge = piece.bridge
     scale_A = current_scale_A(bridge)
     total = _lost_flux(piece, before) / scale_A
-    moment = _MOMENT * bridge.period_s
+    fastest = max((-rate for rate in piece.rates), default=0.0)
+    moment = min(_MOMENT * bridge.period_s, _FAST / fastest if fastest else bridge.period_s)
     voltages = None
     for leg, gate in enumerate(piece.gates):
         if gate:

@@ -12,6 +12,7 @@ Coefficients = tuple[float, ...]
 Rates = tuple[float, ...]
 
 _MOST_STEPS = 400
+_ROUNDED = 1e3  # of the slack: how far below zero a start may lie by rounding
 
 
 def psi(rate: float, s: float) -> float:
@@ -64,9 +65,10 @@ def first_fall(
     """First instant in (start, end) at which f falls through zero, `None` when it does not.
 
     `slack` is the size below which a value counts as zero: f may start there, and a dip that
-    stays above −slack is no fall.
+    stays above −slack is no fall. A start a little further below zero that rises at once is
+    rounding, and the search begins where f has come up.
     """
-    s = start
+    s = _risen(f, rates, end, slack, start)
     for _ in range(_MOST_STEPS):
         height, step = _safe_step(f, rates, s, slack)
         if height <= 0.0 or (step is not None and step <= 4e-16 * s):
@@ -75,6 +77,15 @@ def first_fall(
             return None
         s += step
     return _polished(f, rates, s, start)
+
+
+def _risen(f: Coefficients, rates: Rates, end: float, slack: float, start: float) -> float:
+    """Where a function that starts just below zero and rises has come up, else the start."""
+    depth = -value(f, rates, start)
+    if not slack < depth < _ROUNDED * slack or slope(f, rates, start) <= 0.0:
+        return start
+    below = first_fall(scaled(f, -1.0), rates, end, 0.0, start)
+    return start if below is None else below
 
 
 def _safe_step(f: Coefficients, rates: Rates, s: float, slack: float) -> tuple[float, float | None]:

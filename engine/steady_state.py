@@ -19,13 +19,13 @@ from engine.bridge import Bridge
 from engine.duty import Triple
 from engine.errors import NoSolution
 from engine.gating import gate_steps, gate_window_s
-from engine.leg_states import current_scale_A
+from engine.leg_states import current_scale_A, impedances_ohm
 from engine.period_map import Matrix, Walk
 from engine.pieces import Piece
 
 _MOST_STEPS = 400  # of Newton's method
 _CLOSED = 1e-13  # residual of the period map, of the current scale
-_STALLED = 1e-11  # residual that is accepted when no step lowers it any more
+_STALLED = 1e-9  # residual that is accepted when a step no longer halves it
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -59,7 +59,9 @@ def solve(bridge: Bridge) -> SteadyState:
 def _refuse(bridge: Bridge) -> None:
     R, L = bridge.resistance_ohm, bridge.inductance_H
     if any(bridge.emf_peak_V):
-        raise NoSolution("load.emf_peak_V", "must be 0: loads with an EMF are not solved yet")
+        raise NoSolution(
+            "load.emf_peak_V", "must be 0: this version does not solve loads with an EMF yet"
+        )
     if any(r == 0.0 and l == 0.0 for r, l in zip(R, L, strict=True)):
         raise NoSolution("load.resistance_ohm", "R and L of a branch must not both be 0")
     if R.count(0.0) > (1 if bridge.connection == "star" else 0):
@@ -112,7 +114,14 @@ def _periodic_start(bridge: Bridge) -> Triple:
         merit = sqrt(a * (x[0] + p) ** 2 + b * (x[1] + q) ** 2 + c * (x[2] + r) ** 2)
         return _Image(x, image, (_negative(rows[0]), _negative(rows[1]), _negative(rows[2])), merit)
 
-    return _fixed_point(mapped, current_scale_A(bridge) * sqrt(a + b + c))
+    return _fixed_point(mapped, _usual_norm(bridge))
+
+
+def _usual_norm(bridge: Bridge) -> float:
+    """√(xᵀLx) of currents of the order of those that flow."""
+    most_A = current_scale_A(bridge)
+    currents = (min(most_A, bridge.voltage_V / Z) for Z in impedances_ohm(bridge))
+    return sqrt(sum(L * i * i for L, i in zip(bridge.inductance_H, currents, strict=True)))
 
 
 def _negative(row: Triple) -> Triple:
@@ -126,7 +135,7 @@ def _fixed_point(mapped: _Map, scale: float) -> Triple:
         if here.merit <= _CLOSED * scale:
             return here.image
         better = _newton(mapped, here)
-        if better is None and here.merit <= _STALLED * scale:
+        if here.merit <= _STALLED * scale and (better is None or better.merit > 0.5 * here.merit):
             return here.image
         here = better or mapped(here.image)
     raise NoSolution("load", "the periodic steady state was not reached")

@@ -35,6 +35,7 @@ class DutyPage(Page):
     def __init__(self, document: OpenSelection) -> None:
         super().__init__(document)
         self._picture: Picture | None = None
+        self._problems: tuple[Problem, ...] = ()
         self._stale = False
         self.angle_cursor = AngleCursor(self)
         self.entries = DutyEntries(document)
@@ -48,23 +49,28 @@ class DutyPage(Page):
 
     def show_picture(self, picture: Picture) -> None:
         self._stale = False
-        self.entries.show_problems(())
+        self._mark_entries(())
         self._show(picture)
 
     def show_stale(self, problems: tuple[Problem, ...]) -> None:
         self._stale = True
-        self.entries.show_problems(problems)
+        self._mark_entries(problems)
         self._show_stale()
         if self._picture is None and problems:
             self.strips.show_incomplete(f"No result: {problems[0].text}")
 
     def show_incomplete(self, missing: tuple[str, ...]) -> None:
         self._picture = None
-        self.entries.show_problems(())
+        self._mark_entries(())
         names = ", ".join(name_of(key) for key in missing)
         self.strips.show_incomplete(f"Needs {names}" if names else "Computing …")
         self.side.show_incomplete()
         self._sentence.setText("")
+
+    def _mark_entries(self, problems: tuple[Problem, ...]) -> None:
+        if problems != self._problems:
+            self._problems = problems
+            self.entries.show_problems(problems)
 
     def _show(self, picture: Picture) -> None:
         self._picture = picture

@@ -31,6 +31,8 @@ class DutySide(QWidget):
         self._lists.addWidget(self.positions)
         self._lists.addWidget(self.events)
         self._asked_for_list = False
+        self._picture: Picture | None = None
+        self._stale = False
         self._below = QVBoxLayout()
         self._below.setSpacing(4)
         self._below.addWidget(self.read_out)
@@ -48,22 +50,34 @@ class DutySide(QWidget):
     # What is shown ----------------------------------------------------------------------
 
     def show_picture(self, picture: Picture) -> None:
+        self._picture, self._stale = picture, False
         self.drawing.show_picture(picture)
         self.read_out.refresh()
-        self.positions.show_stress(picture.stress, picture.looked_at.position)
-        self.events.show_events(picture.stress.events)
+        self._fill_list()
 
     def show_stale(self) -> None:
+        self._stale = True
         self.drawing.show_stale()
         self.read_out.refresh()
-        self.positions.show_stale()
-        self.events.show_stale()
+        self._fill_list()
 
     def show_incomplete(self) -> None:
+        self._picture = None
         self.drawing.show_incomplete()
         self.read_out.refresh()
-        self.positions.show_stress(None, 0)
-        self.events.show_events(())
+        self._fill_list()
+
+    def _fill_list(self) -> None:
+        """The list in view; the other one waits until it is asked for."""
+        picture = self._picture
+        if self.list is self.events:
+            self.events.show_events(picture.stress.events if picture else ())
+        elif picture is None:
+            self.positions.show_stress(None, 0)
+        else:
+            self.positions.show_stress(picture.stress, picture.looked_at.position)
+        if self._stale:
+            self.list.show_stale()
 
     # Which list, and room for it --------------------------------------------------------
 
@@ -82,6 +96,7 @@ class DutySide(QWidget):
         else:
             self._lists.setCurrentWidget(self.positions)
             self._asked_for_list = False
+        self._fill_list()
         self._arrange()
 
     def fit(self, narrow: bool) -> None:

@@ -22,8 +22,8 @@ class Page(QWidget):
 
     asked = Signal(str)
     """Key of an entry, here or on another page, that the user wants to go to."""
-    report_asked = Signal(str)
-    """The report is to be saved; the size of its paper."""
+    report_asked = Signal(object)
+    """The report is to be saved with these `ReportOptions`."""
 
     def __init__(self, document: OpenSelection) -> None:
         super().__init__()

@@ -20,8 +20,10 @@ from app.entry_names import assumed_entries, name_of
 from app.open_selection import OpenSelection
 from app.pages.page import Page
 from app.picture import Picture, Problem
-from app.report.pdf import paper_size, report_of
+from app.report.options import ReportOptions
+from app.report.pdf import report_of
 from app.theme import BODY, TABLE, font
+from app.verdict_sentence import statement_of_problems
 from app.widgets.choice_entry import ChoiceEntry
 from app.widgets.entry_row import WIDE, words
 from app.widgets.page_sheets import PageSheets
@@ -29,6 +31,7 @@ from engine.errors import SwitchwrightError
 
 _TEXTS = {"title": "Title", "engineer": "Engineer", "reference": "Reference"}
 _SIZES: Mapping[object, str] = {"A4": "A4", "Letter": "Letter"}
+_CANDIDATES: Mapping[object, str] = {False: "all", True: "chosen only"}
 _REST_MS = 150
 """The pages are laid out anew when entries have rested for so long."""
 
@@ -44,11 +47,13 @@ class ReportPage(Page):
         self.notes = QPlainTextEdit()
         self.paper = ChoiceEntry("", "Paper", _SIZES)
         self.paper.set_value("A4")
+        self.candidates = ChoiceEntry("", "Candidates in the report", _CANDIDATES)
+        self.candidates.set_value(False)
         self.save = QPushButton("Save as PDF …")
         self.sheets = PageSheets()
         self._missing = QWidget()
         self._missing_place = QVBoxLayout()
-        self._said = words("", TABLE, "second")
+        self.said = words("", TABLE, "second")
         self._picture: Picture | None = None
         self._timer = QTimer(self, singleShot=True, interval=_REST_MS)
         self._timer.timeout.connect(self._lay_out_pages)
@@ -65,14 +70,14 @@ class ReportPage(Page):
         )
         self._picture = picture
         self.save.setEnabled(True)
-        self._said.setText("")
+        self.said.setText("")
         if not same or self.sheets.stale:
             self._timer.start()
         self._list_missing(picture)
 
     def show_stale(self, problems: tuple[Problem, ...]) -> None:
         self.save.setEnabled(False)
-        self._said.setText("stale: " + "; ".join(problem.text for problem in problems))
+        self.said.setText(str(statement_of_problems(problems)))
         self.sheets.show_stale()
 
     def show_incomplete(self, missing: tuple[str, ...]) -> None:
@@ -81,7 +86,7 @@ class ReportPage(Page):
         self.save.setEnabled(False)
         self.sheets.show_report(None)
         names = ", ".join(name_of(key) for key in missing)
-        self._said.setText(f"Needs {names}." if names else "Computing …")
+        self.said.setText(f"Needs {names}." if names else "Computing …")
         self._show_lines({})
 
     def go_to(self, key: str) -> bool:
@@ -98,14 +103,14 @@ class ReportPage(Page):
     def _lay_out_pages(self) -> None:
         if self._picture is None:
             return
-        size = paper_size(self.paper.value)
+        selection, assessment = self._picture.selection, self._picture.assessment
         try:
-            report = report_of(self._picture.selection, self._picture.assessment, size)
+            report = report_of(selection, assessment, self._options())
         except SwitchwrightError as error:
-            self._said.setText(str(error))
+            self.said.setText(str(error))
         else:
             self.sheets.show_report(report)
-            self._said.setText(f"{report.pages} pages")
+            self.said.setText(f"{report.pages} pages")
 
     # Assumed and missing ----------------------------------------------------------------
 
@@ -150,6 +155,7 @@ class ReportPage(Page):
         for key, field in self.texts.items():
             if field.text() != getattr(selection, key):
                 field.setText(getattr(selection, key))
+                field.setCursorPosition(0)
         if self.notes.toPlainText() != selection.notes:
             self.notes.setPlainText(selection.notes)
 
@@ -163,12 +169,15 @@ class ReportPage(Page):
         self.notes.textChanged.connect(
             lambda: self.document.set_entry("notes", self.notes.toPlainText(), "Notes")
         )
-        self.paper.entered.connect(self._choose_paper)
-        self.save.clicked.connect(lambda: self.report_asked.emit(self.paper.value))
+        self.paper.entered.connect(self._lay_out_pages)
+        self.candidates.entered.connect(self._lay_out_pages)
+        self.save.clicked.connect(lambda: self.report_asked.emit(self._options()))
 
-    def _choose_paper(self, size: object) -> None:
-        self.paper.set_value(size)
-        self._lay_out_pages()
+    def _options(self) -> ReportOptions:
+        return ReportOptions(
+            paper="Letter" if self.paper.value == "Letter" else "A4",
+            only_chosen=bool(self.candidates.value),
+        )
 
     def _build(self) -> None:
         row = QHBoxLayout(self)
@@ -188,21 +197,25 @@ class ReportPage(Page):
             label.setBuddy(field)
             field.setAccessibleName(_TEXTS[key])
             field.setMaxLength(400)
+            field.setAcceptDrops(False)  # a file dropped here is for the window
             layout.addWidget(label)
             layout.addWidget(field)
         label = words("Notes")
         label.setBuddy(self.notes)
         self.notes.setAccessibleName("Notes")
         self.notes.setTabChangesFocus(True)
+        self.notes.setAcceptDrops(False)
         self.notes.setFixedHeight(72)
         layout.addWidget(label)
         layout.addWidget(self.notes)
         layout.addSpacing(12)
         layout.addWidget(_head("Paper"))
         layout.addWidget(self.paper)
+        layout.addWidget(_head("Candidates"))
+        layout.addWidget(self.candidates)
         layout.addWidget(self.save)
-        layout.addWidget(self._said)
-        self._said.setWordWrap(True)
+        layout.addWidget(self.said)
+        self.said.setWordWrap(True)
         layout.addSpacing(12)
         layout.addWidget(_head("Assumed or missing"))
         self._missing_place.addWidget(self._missing)

@@ -2,52 +2,83 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from typing import Literal
 
 from engine.checks import Verdict
+from engine.waveforms import Waveforms
+
+Style = Literal["body", "note", "heading", "verdict"]
 
 
 @dataclass(frozen=True, slots=True)
 class Paragraph:
     text: str
-    style: Literal["body", "note", "verdict", "heading"] = "body"
+    style: Style = "body"
     verdict: Verdict | None = None
     """Its mark stands before the text."""
 
 
 @dataclass(frozen=True, slots=True)
+class Column:
+    """Head, side and share of the table's width, in any unit that the columns share."""
+
+    head: str
+    width: float
+    right: bool = False
+
+
+@dataclass(frozen=True, slots=True)
 class Row:
-    """One line of a table; `below` runs under it over the whole width."""
+    """One line of a table.
+
+    There may be fewer cells than columns: `instead` then stands in place of the rest, up to the
+    verdict, whose mark and word take the last column. `below` runs under the row, from the
+    second column. A `strong` row heads those that follow it. The columns in `assumed` hold
+    values that nobody entered.
+    """
 
     cells: tuple[str, ...]
+    instead: str = ""
     verdict: Verdict | None = None
-    """Its mark and word stand in the last cell."""
     below: str = ""
     strong: bool = False
+    assumed: frozenset[int] = frozenset()
 
 
 @dataclass(frozen=True, slots=True)
 class Table:
-    head: tuple[str, ...]
+    """Short tables stay on one page, `whole`; others repeat their head on each."""
+
+    columns: tuple[Column, ...]
     rows: tuple[Row, ...]
-    align: str
-    """One letter a column: l or r."""
-    widths: tuple[int, ...] = ()
-    """Per cent of the page's width."""
+    whole: bool = False
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Figure:
+    """The waveforms of one period; height in px of 1/96 inch."""
+
+    waveforms: Waveforms
+    delta: bool
+    height: float
 
 
 @dataclass(frozen=True, slots=True)
-class Figure:
-    """A drawing, by the name that the layout knows it by; size in px of 1/96 inch."""
+class Blanks:
+    """Lines to be filled in by hand: a name in front of the fields of `heads`."""
 
-    name: Literal["waveforms"]
-    height: int
-    caption: str
+    names: tuple[str, ...]
+    heads: tuple[str, ...]
 
 
-Block = Paragraph | Table | Figure
+@dataclass(frozen=True, slots=True)
+class Contents:
+    """The titles of all sections after this one, with their pages."""
+
+
+Block = Paragraph | Table | Figure | Blanks | Contents
 
 
 @dataclass(frozen=True, slots=True)
@@ -55,8 +86,10 @@ class Section:
     title: str
     blocks: tuple[Block, ...]
     new_page: bool = False
+    whole: bool = False
+    """Stays on one page."""
 
 
-def plain_rows(rows: Sequence[Sequence[str]]) -> tuple[Row, ...]:
+def plain_rows(rows: Iterable[Sequence[str]]) -> tuple[Row, ...]:
     """Rows that hold nothing but cells."""
     return tuple(Row(tuple(cells)) for cells in rows)

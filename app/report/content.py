@@ -2,311 +2,276 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections import Counter
+from collections.abc import Iterator, Mapping, Sequence
 from pathlib import Path
 
 from app.cautions import cautions
-from app.entry_names import name_of
+from app.entry_names import assumed_entries, name_of
 from app.pages.check_pages import chosen_result, deciding_check
-from app.report.blocks import Block, Figure, Paragraph, Row, Section, Table, plain_rows
-from app.report.candidates import candidate_sections
-from engine.checks import Assessment, Wanted
-from engine.duty import REQUIRED, SAME_AS, USUAL, as_triple, value_of
-from engine.quantities import printed, shown
-from engine.rule_sets import Permitted, rule_set_of
-from engine.selection import CycleSegment, GatePulse, Selection, entry
-from engine.stress import BridgeStress, PositionStress
+from app.report.blocks import Blanks, Block, Column, Contents, Paragraph, Row, Section, Table
+from app.report.candidates import (
+    Entrant,
+    assumed_conditions,
+    candidate_sections,
+    entrants_of,
+    overview,
+)
+from app.report.duty import duty_section
+from app.report.stresses import (
+    bridge_section,
+    position_section,
+    turn_off_section,
+    waveform_section,
+)
+from app.report.wording import NOTHING, amount, at_corner, sentence
+from app.verdict_sentence import sentence_of
+from engine.bridge import nominal_bridge
+from engine.checks import VERDICTS, Assessment, Wanted
+from engine.duty import duty_of
+from engine.quantities import printed
+from engine.rule_sets import Permitted, RuleSet, rule_set_of
+from engine.selection import Selection
+from engine.steady_state import solve
+from engine.verdicts.wording import named
+from engine.waveforms import sampled
+from parts_library.rating_sheet import SHEETS
 
 _METHODS = Path(__file__).parent.parent.parent / "resources" / "report" / "methods.txt"
 _REOPEN = (
-    "The selection travels with this report as the attached file selection.json: save it and "
-    "open it with 'python3 -m app selection.json' to see, edit and compute everything anew. "
-    "The results stand in results.json."
+    "To reopen it: the selection travels with this file as the attachment selection.json; save "
+    "that and open it with 'python3 -m app selection.json' to see, edit and compute everything "
+    "anew. The attachment results.json holds all results in full."
 )
 
 
 def sections_of(selection: Selection, assessment: Assessment) -> tuple[Section, ...]:
-    """Every section of the report."""
-    found = [
-        _verdict(assessment),
-        Section("Cautions", tuple(Paragraph(text) for text in cautions())),
-        _duty(selection),
-        Section(
-            "Waveforms at the nominal point",
-            (Figure("waveforms", 630, "One period at nominal voltage, frequency and load."),),
-            new_page=True,
-        ),
-    ]
+    """Every section of the report.
+
+    Raises
+    ------
+    InvalidSelection, NoSolution
+        There is nothing to report on.
+    """
+    return tuple(_sections(selection, assessment))
+
+
+def _sections(selection: Selection, assessment: Assessment) -> Iterator[Section]:
+    duty, entrants = duty_of(selection), entrants_of(selection, assessment)
+    yield _verdict(assessment, entrants)
+    yield Section("Cautions", tuple(Paragraph(text) for text in cautions()))
+    yield Section("Contents", (Contents(),))
+    yield duty_section(selection)
     if assessment.nominal is not None:
-        found += _stresses(assessment.nominal)
-    if assessment.candidates:
-        found += candidate_sections(selection, assessment)
+        yield bridge_section(assessment.nominal, duty)
+    yield waveform_section(sampled(solve(nominal_bridge(duty))), duty)
+    if assessment.nominal is not None:
+        yield position_section(assessment.nominal)
+    if entrants:
+        yield from candidate_sections(selection, entrants)
     else:
-        found.append(_wanted(assessment.wanted))
-    found += [_assumed(selection, assessment), _rules(selection), _methods(), _sign_off()]
-    return tuple(found)
+        yield _wanted(assessment.wanted)
+    if assessment.nominal is not None:
+        yield turn_off_section(assessment.nominal)
+    yield _assumed(selection, assessment, entrants)
+    yield _rules(rule_set_of(selection))
+    yield _methods()
+    yield _sign_off()
 
 
-def _verdict(assessment: Assessment) -> Section:
+# Verdict ----------------------------------------------------------------------------------
+
+
+def _verdict(assessment: Assessment, entrants: Sequence[Entrant]) -> Section:
     result = chosen_result(assessment)
-    if result is None:
-        text = "No candidate has been chosen."
-        blocks: tuple[Block, ...] = (Paragraph(text, "verdict"), Paragraph(_REOPEN, "note"))
-        return Section("Verdict", blocks)
-    remark = f" ({result.remark})" if result.remark else ""
-    basis = f" It rests at its weakest on {result.weakest_basis}." if result.weakest_basis else ""
-    worst = deciding_check(result)
-    why = f"{worst.rating}: {worst.how or worst.reason}." if worst is not None else ""
-    return Section(
-        "Verdict",
+    entrant = next((each for each in entrants if each.result is result), None)
+    if entrant is None:
+        head = Paragraph("No candidate chosen" if entrants else "No candidate yet", "verdict")
+        said = _without_choice(entrants)
+    else:
+        text = f"{entrant.result.name}: {entrant.result.verdict}{_bare(entrant)}"
+        head = Paragraph(text, "verdict", entrant.result.verdict)
+        said = f"{_deciding(entrant)} {_counted(entrant)}"
+    table = [overview(entrants, assessment.chosen)] if entrants else []
+    return Section("Verdict", (head, Paragraph(f"{said} {_REOPEN}"), *table))
+
+
+def _without_choice(entrants: Sequence[Entrant]) -> str:
+    if entrants:
+        return "The candidates were assessed; none of them has been chosen."
+    return "This report states what the duty puts on the parts, and what they must at least stand."
+
+
+def _bare(entrant: Entrant) -> str:
+    """What the verdict stands without."""
+    remarks = entrant.result.remark.split("; ")
+    return "".join(f" {part}" for part in remarks if part.startswith("without"))
+
+
+def _deciding(entrant: Entrant) -> str:
+    """The row that decides, and the weakest basis."""
+    result, check = entrant.result, deciding_check(entrant.result)
+    if check is None:
+        return f"Candidate {entrant.number} has no checks."
+    decides = f"Row {entrant.number_of(check)} decides: {sentence_of(check)}."
+    if result.weakest_basis:
+        return f"{decides} The verdict rests at its weakest on {result.weakest_basis}."
+    if result.verdict == "not assessed":
+        return decides
+    return f"{decides} All ratings it rests on count as maximum ratings."
+
+
+def _counted(entrant: Entrant) -> str:
+    """How many of the checks have which verdict, and how many want an entry."""
+    checks = entrant.result.checks
+    counts = Counter(check.verdict for check in checks)
+    lacking = sum(bool(check.needs) for check in checks)
+    missing = {"not assessed": f" ({lacking} for want of an entry listed below)" if lacking else ""}
+    told = ", ".join(
+        f"{counts[verdict]} {verdict}{missing.get(verdict, '')}"
+        for verdict in VERDICTS
+        if counts[verdict]
+    )
+    return f"Of its {len(checks)} checks: {told}."
+
+
+def _wanted(wanted: Sequence[Wanted]) -> Section:
+    columns = (
+        Column("no.", 8),
+        Column("rating", 26),
+        Column("must be", 26, right=True),
+        Column("next usual class", 22, right=True),
+        Column("position", 18, right=True),
+    )
+    rows = tuple(_wanted_row(number, each) for number, each in enumerate(wanted, start=1))
+    return Section("What the parts must at least stand", (Table(columns, rows),))
+
+
+def _wanted_row(number: int, wanted: Wanted) -> Row:
+    side = "at most" if wanted.at_most else "at least"
+    usual = wanted.next_class
+    return Row(
         (
-            Paragraph(f"{result.name}: {result.verdict}", "verdict", result.verdict),
-            Paragraph(f"Deciding row: {why}{basis}" if why else basis),
-            *([Paragraph(f"Beside the verdict{remark}.")] if remark else []),
-            Paragraph(_REOPEN, "note"),
+            f"W-{number:02d}",
+            wanted.rating + (" of the diode" if wanted.id.startswith("diode.") else ""),
+            f"{side} {amount(wanted.value, wanted.unit)}",
+            NOTHING if usual is None else f"{usual:g} {printed(wanted.unit)}",
+            wanted.position or NOTHING,
         ),
+        below=f"{wanted.how}. At {at_corner(wanted.corner)}.",
     )
 
 
-def _duty(selection: Selection) -> Section:
-    rows = [_entry_row(selection, key) for key in _duty_keys()]
-    return Section(
-        "Duty",
-        (
-            Table(
-                ("entry", "value", ""),
-                tuple(row for row in rows if row is not None),
-                "lrl",
-                (40, 40, 20),
-            ),
-        ),
-    )
+# Assumed or missing -----------------------------------------------------------------------
+
+_SAID_ELSEWHERE = {"rule_set", "assumed"}
+"""Warnings whose matter has a section or a table of its own."""
 
 
-def _duty_keys() -> list[str]:
-    """Keys of the duty in the order of the file, extremes after their nominal value."""
-    keys = [*REQUIRED, *SAME_AS, *USUAL, "cooling.sink_K_per_W", "supply.link_capacitance_F"]
-    groups = ["supply", "gating", "load", "feedback_diodes", "on_state_drops", "cooling"]
-    order = {name: place for place, name in enumerate([*groups, "overload_cycle", "rule_set"])}
-    return sorted(keys, key=lambda key: order[key.split(".")[0]])
-
-
-def _entry_row(selection: Selection, key: str) -> Row | None:
-    if key.startswith("load.emf") or key in {"load.scaling", "supply.follows_frequency"}:
-        return None
-    value = value_of(selection, key)
-    assumed = "assumed" if entry(selection, key) is None and value is not None else ""
-    return Row((name_of(key), "not given" if value is None else _told(value, key), assumed))
-
-
-def _told(value: object, key: str) -> str:
-    """A value of the duty in words and units."""
-    if isinstance(value, bool):
-        return "yes" if value else "no"
-    if isinstance(value, tuple) and value and isinstance(value[0], CycleSegment):
-        return "; ".join(f"{each.duration_s:g} s at load × {each.load_factor:g}" for each in value)
-    if isinstance(value, GatePulse):
-        return value.form if value.width_s is None else f"{value.form}, {shown(value.width_s, 's')}"
-    if isinstance(value, tuple | float | int):
-        unit = _unit_of(key)
-        numbers = as_triple(value) if isinstance(value, tuple) else (float(value),)
-        return ", ".join(shown(number, unit, 6) if unit else f"{number:g}" for number in numbers)
-    return str(getattr(value, "based_on", value))
-
-
-def _unit_of(key: str) -> str:
-    last = key.split(".")[-1]
-    for unit in ("K_per_W", "ohm", "deg", "Hz", "V", "H", "F", "s", "C"):
-        if last.endswith("_" + unit):
-            return unit
-    return ""
-
-
-def _stresses(nominal: BridgeStress) -> tuple[Section, ...]:
-    switches = Table(
-        ("switch", "average", "rms", "peak", "at gate-off", "forward", "reverse"),
-        tuple(_switch_row(position) for position in nominal.positions),
-        "lrrrrrr",
-    )
-    diodes = Table(
-        ("diode", "average", "rms", "peak", "reverse"),
-        tuple(_diode_row(position) for position in nominal.positions),
-        "lrrrr",
-    )
-    turn_off = Table(
-        ("switch", "turn-off", "dead interval", "freewheel", "overrun", "forward after", "at once"),
-        tuple(_turn_off_row(position) for position in nominal.positions),
-        "llrrrrr",
-    )
-    return (
-        Section("The bridge at the nominal point", (_bridge_table(nominal),)),
-        Section("Stress of the six positions at the nominal point", (switches, diodes), True),
-        Section("Turn-off at the nominal point", (turn_off, *_turn_off_words(nominal))),
-    )
-
-
-def _turn_off_words(nominal: BridgeStress) -> Iterator[Block]:
-    kinds = {position.turn_off for position in nominal.positions}
-    if "forced" in kinds:
-        yield Paragraph(
-            "Forced: current flows at gate-off and forward voltage returns at once. A thyristor "
-            "there needs a commutation circuit that holds it reversed; an IGBT turns off by "
-            "itself."
-        )
-    if "natural" in kinds:
-        yield Paragraph(
-            "Natural: the current has ended before gate-off; 'forward after' is the time that "
-            "the switch has before forward voltage returns."
-        )
-
-
-def _bridge_table(nominal: BridgeStress) -> Table:
-    def three(values: tuple[float, float, float] | None, unit: str) -> str:
-        if values is None:
-            return "–"
-        alike = max(values) - min(values) <= 1e-9 * max(map(abs, values))
-        return ", ".join(_four(value, unit) for value in (values[:1] if alike else values))
-
-    thd = [f"{100.0 * value:.1f}" for value in nominal.line_voltage_thd]
-    rows = [
-        ("line current, rms", three(nominal.line_current_rms_A, "A")),
-        ("line current, peak", three(nominal.line_current_peak_A, "A")),
-        ("line voltage, rms", three(nominal.line_voltage_rms_V, "V")),
-        ("line voltage, fundamental rms", three(nominal.line_voltage_fundamental_rms_V, "V")),
-        ("line voltage, THD", ", ".join(dict.fromkeys(thd)) + " %"),
-        ("phase voltage, rms", three(nominal.phase_voltage_rms_V, "V")),
-        ("load power", _four(nominal.load_power_W, "W")),
-        (
-            "link current: average, rms, ripple rms",
-            ", ".join(
-                _four(value, "A")
-                for value in (
-                    nominal.link_current_avg_A,
-                    nominal.link_current_rms_A,
-                    nominal.link_current_ripple_rms_A,
-                )
-            ),
-        ),
+def _assumed(selection: Selection, assessment: Assessment, entrants: Sequence[Entrant]) -> Section:
+    columns = (Column("what", 60), Column("state", 40))
+    assumed = assumed_entries(selection)
+    rows = [Row(("Duty",), strong=True)] if assumed else []
+    rows += [Row((name_of(key), "assumed, value under Duty")) for key in assumed]
+    for entrant in entrants:
+        found = list(_open_entries(entrant))
+        name = f"Candidate {entrant.number}: {entrant.result.name}"
+        rows += [Row((name,), strong=True), *found] if found else []
+    said = [
+        Paragraph(sentence(warning.text))
+        for warning in assessment.warnings
+        if warning.id not in _SAID_ELSEWHERE
     ]
-    return Table(("bridge", ""), plain_rows(rows), "lr", (50, 50))
+    table = [Table(columns, tuple(rows))] if rows else [Paragraph("Every entry was made.")]
+    return Section("What is assumed or missing", (*table, *said))
 
 
-def _switch_row(position: PositionStress) -> Row:
-    switch = position.switch
-    return Row(
-        (
-            position.position,
-            _four(switch.current_avg_A, "A"),
-            _four(switch.current_rms_A, "A"),
-            _four(switch.current_peak_A, "A"),
-            _four(switch.gate_off_current_A, "A"),
-            _four(switch.forward_blocking_peak_V, "V"),
-            _four(switch.reverse_blocking_peak_V, "V"),
-        )
-    )
+def _open_entries(entrant: Entrant) -> Iterator[Row]:
+    """What keeps rows from being assessed, then the test conditions that nobody entered."""
+    waiting: dict[str, list[str]] = {}
+    for number, check in entrant.numbered:
+        for key in check.needs:
+            waiting.setdefault(key, []).append(number)
+    for key, numbers in waiting.items():
+        yield Row((named(key), f"missing for {', '.join(numbers)}"))
+    for part in ("switch", "diode"):
+        keys = assumed_conditions(getattr(entrant.candidate, part))
+        if keys:
+            yield Row((f"{_listed(keys)} of the {part}", "assumed, value side by side"))
 
 
-def _diode_row(position: PositionStress) -> Row:
-    diode = position.diode
-    return Row(
-        (
-            "D" + position.position[1:],
-            _four(diode.current_avg_A, "A"),
-            _four(diode.current_rms_A, "A"),
-            _four(diode.current_peak_A, "A"),
-            _four(diode.reverse_blocking_peak_V, "V"),
-        )
-    )
+def _listed(keys: Sequence[str]) -> str:
+    """Test conditions in words: 'case temperature of I_T(AV)'."""
+    names = {rating.key: rating.name for sheet in SHEETS.values() for rating in sheet}
+    return ", ".join(names[key] for key in keys)
 
 
-def _turn_off_row(position: PositionStress) -> Row:
-    return Row(
-        (
-            position.position,
-            position.turn_off,
-            _four(position.dead_interval_s, "s"),
-            _four(position.freewheel_s, "s"),
-            _four(position.overrun_s, "s"),
-            _four(position.forward_reapplied_s, "s"),
-            _four(position.reapplied_step_V, "V"),
-        )
-    )
+# Rules, methods, sign-off -----------------------------------------------------------------
 
 
-def _four(value: float | None, unit: str) -> str:
-    return "–" if value is None else shown(value, unit, digits=4)
+def _rules(rules: RuleSet) -> Section:
+    band = f"'{rules.name}': a headroom under {rules.tight_band_pct:g} % is tight. {rules.note}"
+    fractions = _permitted_table("permitted fraction of", rules.fractions)
+    factors = _permitted_table("factor", rules.factors)
+    return Section("Rule set", (Paragraph(band.strip()), fractions, factors))
 
 
-def _wanted(wanted: tuple[Wanted, ...]) -> Section:
+_FACTOR_NAMES = {
+    "tq": "k of t_q",
+    "tq_low_reverse_voltage": "t_q at a low reverse voltage",
+    "tq_per_K": "t_q, growth per kelvin",
+    "blanking": "k of the blanking",
+    "transient_overshoot": "transient over link voltage",
+    "junction_margin_K": "kelvin kept below T_vj max",
+    "junction_limit_C": "highest T_vj, °C",
+}
+_DEVICES = {"igbt": "IGBT", "diode": "diode", "thyristor": "thyristor"}
+
+
+def _permitted_table(head: str, figures: Mapping[str, Permitted]) -> Table:
+    """Figures of one value and one source share a line."""
+    groups: dict[Permitted, list[str]] = {}
+    for key, figure in figures.items():
+        groups.setdefault(figure, []).append(_figure_name(key))
+    columns = (Column(head, 34), Column("", 10, right=True), Column("source", 56))
     rows = [
-        (
-            each.rating,
-            ("at most " if each.at_most else "at least ") + shown(each.value, each.unit, 4),
-            "" if each.next_class is None else f"{each.next_class:g} {printed(each.unit)}",
-            f"{each.corner.voltage_V:g} V, {each.corner.frequency_Hz:g} Hz, "
-            f"load × {each.corner.load_factor:g}",
-        )
-        for each in wanted
+        Row((", ".join(names), f"{figure.value:.4g}", figure.source))
+        for figure, names in groups.items()
     ]
-    table = Table(("rating", "wanted", "next usual class", "corner"), plain_rows(rows), "lrrl")
-    return Section("What the parts must at least stand", (table,))
+    return Table(columns, tuple(rows))
 
 
-def _assumed(selection: Selection, assessment: Assessment) -> Section:
-    blocks = list(_assumed_blocks(selection, assessment))
-    return Section("What is assumed or missing", tuple(blocks) or (Paragraph("Nothing."),))
+def _figure_name(key: str) -> str:
+    """'switch.I_TAV' as 'I_T(AV)', 'igbt.V_steady' as 'steady link voltage (IGBT)'."""
+    part, _, stem = key.partition(".")
+    if not stem:
+        return _FACTOR_NAMES.get(key, key)
+    device = f" ({_DEVICES[part]})" if part in _DEVICES else ""
+    return _SYMBOLS.get(stem, stem) + device
 
 
-def _assumed_blocks(selection: Selection, assessment: Assessment) -> Iterator[Block]:
-    keys = [key for key in (*USUAL, *SAME_AS) if entry(selection, key) is None]
-    names = [name_of(key) for key in keys if _entry_row(selection, key) is not None]
-    if names:
-        yield Paragraph("Assumed entries of the duty: " + ", ".join(names) + ".")
-    for result in assessment.candidates:
-        missing = [check.rating for check in result.checks if check.needs]
-        if missing:
-            listed = ", ".join(missing)
-            yield Paragraph(f"{result.name}: not assessed for want of a rating: {listed}.")
-    for warning in assessment.warnings:
-        yield Paragraph(_sentence(warning.text))
-
-
-def _sentence(text: str) -> str:
-    return text[:1].upper() + text[1:] + ("" if text.endswith(".") else ".")
-
-
-def _rules(selection: Selection) -> Section:
-    rules = rule_set_of(selection)
-
-    def rows(figures: dict[str, Permitted]) -> tuple[Row, ...]:
-        return plain_rows([(key, f"{p.value:.4g}", p.source) for key, p in figures.items()])
-
-    band = f"'{rules.name}'; a headroom under {rules.tight_band_pct:g} % is tight. {rules.note}"
-    return Section(
-        "Rule set",
-        (
-            Paragraph(band),
-            Table(
-                ("permitted fraction of", "", "source"),
-                rows(dict(rules.fractions)),
-                "lrl",
-                (26, 10, 64),
-            ),
-            Table(("factor", "", "source"), rows(dict(rules.factors)), "lrl", (26, 10, 64)),
-        ),
-    )
+_SYMBOLS = {
+    **{r.checks[0]: r.symbol for sheet in SHEETS.values() for r in sheet if r.checks},
+    "V_steady": "steady link voltage",
+    "turn_off_current": "turned-off current",
+    "didt_recovery": "−di/dt at recovery",
+}
+"""What a check's fraction belongs to."""
 
 
 def _methods() -> Section:
     blocks: list[Block] = []
     for part in _METHODS.read_text(encoding="utf-8").strip().split("\n\n"):
         title, _, text = part.partition("\n")
-        blocks += [Paragraph(title, "heading"), Paragraph(text)]
+        blocks.append(Paragraph(title, "heading"))
+        blocks += [Paragraph(line) for line in text.splitlines()]
     return Section("Methods, sources and limits of validity", tuple(blocks))
 
 
 def _sign_off() -> Section:
-    blank = "\u00a0" * 24
-    rows = [(role, blank, blank, blank) for role in ("Selected by", "Checked by", "Approved by")]
-    table = Table(("", "name", "date", "signature"), plain_rows(rows), "llll", (19, 27, 20, 34))
-    return Section("Sign-off", (table,))
+    said = Paragraph(
+        "Signed for the entries, the assumptions and the choice above, checked against the makers' "
+        "current data sheets."
+    )
+    blanks = Blanks(("Selected by", "Checked by", "Approved by"), ("name", "date", "signature"))
+    return Section("Sign-off", (said, blanks), whole=True)

@@ -5,108 +5,144 @@ from __future__ import annotations
 import os
 from dataclasses import dataclass
 from datetime import date
-from typing import Literal
 
 from PySide6.QtCore import QBuffer, QIODevice, QMarginsF, QRectF, QSizeF, Qt, QUuid
-from PySide6.QtGui import (
-    QAbstractTextDocumentLayout,
-    QPageLayout,
-    QPageSize,
-    QPainter,
-    QPalette,
-    QPdfWriter,
-    QTextDocument,
-)
+from PySide6.QtGui import QColor, QFont, QPageLayout, QPageSize, QPainter, QPdfWriter
 from PySide6.QtWidgets import QApplication
 
 from app.export import results_json
 from app.report.content import sections_of
-from app.report.document import laid_out, print_font
+from app.report.flow import Page
+from app.report.layout import laid_out
+from app.report.options import PageSize, ReportOptions, reported
+from app.report.text import elided, print_font
 from app.selection_file import selection_bytes
-from app.theme import LIGHT, line_pen, load_fonts
-from engine.bridge import nominal_bridge
+from app.theme import AXIS, LIGHT, load_fonts
+from app.widgets.verdict_mark import draw_verdict_mark
 from engine.checks import Assessment
-from engine.duty import duty_of
 from engine.selection import Selection
-from engine.steady_state import solve
-from engine.waveforms import sampled
-
-PageSize = Literal["A4", "Letter"]
 
 _DPI = 96
-_SIDE, _HEAD, _FOOT = 62.0, 84.0, 62.0
+_SIDE, _HEAD, _FOOT = 62.0, 88.0, 62.0
+"""Margins in px of 1/96 inch; header and footer lie in them."""
 _SIZES = {"A4": QPageSize.PageSizeId.A4, "Letter": QPageSize.PageSizeId.Letter}
+_ALL = ReportOptions()
 _NAMESPACE = QUuid("{4d0f0f64-3d0f-5d4e-9a55-4f6b8a3d9d11}")
-
-
-def paper_size(name: object) -> PageSize:
-    """The size that a name means; A4 where it means none."""
-    return "Letter" if name == "Letter" else "A4"
+_MOST_OF_A_FACT = 180.0
+_FOOT_TEXT = "Estimates from entered data: check against the maker's current data sheet."
 
 
 @dataclass(frozen=True)
 class Report:
     """A report ready to be painted, page by page."""
 
-    document: QTextDocument
+    contents: tuple[Page, ...]
     paper: QSizeF
     """px of 1/96 inch"""
-    head: tuple[str, str]
+    title: str
+    facts: str
+    mark: str
+    """The fingerprint, as printed."""
 
     @property
     def pages(self) -> int:
-        return self.document.pageCount()
+        return len(self.contents)
 
 
-def report_of(selection: Selection, assessment: Assessment, size: PageSize = "A4") -> Report:
-    """Lay out the report of a finished assessment."""
+def report_of(
+    selection: Selection, assessment: Assessment, options: ReportOptions = _ALL
+) -> Report:
+    """Lay out the report of a finished assessment.
+
+    Raises
+    ------
+    InvalidSelection, NoSolution
+        There is nothing to report on.
+    """
     load_fonts()
-    paper = QSizeF(QPageSize(_SIZES[size]).size(QPageSize.Unit.Point)) * (_DPI / 72.0)
-    body = QSizeF(paper.width() - 2 * _SIDE, paper.height() - _HEAD - _FOOT)
-    waveforms = sampled(solve(nominal_bridge(duty_of(selection))))
-    document = laid_out(sections_of(selection, assessment), body, waveforms)
-    return Report(document, paper, _head_lines(selection, assessment))
+    assessment = reported(assessment, options)
+    paper = QSizeF(QPageSize(_SIZES[options.paper]).size(QPageSize.Unit.Point)) * (_DPI / 72.0)
+    width, height = paper.width() - 2 * _SIDE, paper.height() - _HEAD - _FOOT
+    return Report(
+        contents=laid_out(sections_of(selection, assessment), width, height),
+        paper=paper,
+        title=selection.title or "Untitled selection",
+        facts=_facts(selection, assessment),
+        mark=_in_fours(assessment.fingerprint),
+    )
 
 
-def paint_page(painter: QPainter, report: Report, number: int) -> None:
-    """Paint a page (from 0) at 96 dpi: header, its part of the document, footer."""
-    paper = report.paper
-    body = QRectF(0, 0, paper.width() - 2 * _SIDE, paper.height() - _HEAD - _FOOT)
+def _facts(selection: Selection, assessment: Assessment) -> str:
+    """Reference, engineer, date and program in one line."""
+    parts = (
+        ("reference", _short(selection.reference)),
+        ("engineer", _short(selection.engineer)),
+        ("date", date.today().isoformat()),
+        (assessment.program, assessment.version),
+    )
+    return "   ·   ".join(f"{name} {value}" for name, value in parts)
+
+
+def _short(text: str) -> str:
+    return elided(text, print_font(AXIS), _MOST_OF_A_FACT) or "–"
+
+
+def _in_fours(fingerprint: str) -> str:
+    groups = (fingerprint[i : i + 4] for i in range(0, len(fingerprint), 4))
+    return f"fingerprint {' '.join(groups)}"
+
+
+# Painting ---------------------------------------------------------------------------------
+
+
+def paint_page(painter: QPainter, report: Report, number: int, marks: bool = True) -> None:
+    """Paint a page (from 0) at 96 dpi: header, what stands on it, footer.
+
+    `marks`: whether verdicts have their marks; those of stale pages have none.
+    """
     painter.save()
-    painter.translate(_SIDE, _HEAD - number * body.height())
-    context = QAbstractTextDocumentLayout.PaintContext()
-    context.clip = body.translated(0, number * body.height())
-    context.palette.setColor(QPalette.ColorRole.Text, LIGHT.ink)
-    painter.setClipRect(context.clip)
-    report.document.documentLayout().draw(painter, context)
-    painter.restore()
+    painter.setClipRect(QRectF(0.0, 0.0, report.paper.width(), report.paper.height()))
     _paint_margins(painter, report, number)
+    painter.translate(_SIDE, _HEAD)
+    for placed in report.contents[number]:
+        placed.slice.paint(painter, placed.top)
+        if placed.slice.mark is not None and marks:
+            verdict, square = placed.slice.mark
+            draw_verdict_mark(painter, square.translated(0.0, placed.top), verdict, LIGHT)
+    painter.restore()
 
 
 def _paint_margins(painter: QPainter, report: Report, number: int) -> None:
-    paper = report.paper
-    width = paper.width() - 2 * _SIDE
-    painter.save()
-    painter.setPen(LIGHT.second_ink)
-    painter.setFont(print_font(9))
-    for line, text in enumerate(report.head):
-        box = QRectF(_SIDE, 34 + 14 * line, width, 14)
-        elided = painter.fontMetrics().elidedText(text, Qt.TextElideMode.ElideRight, int(width))
-        painter.drawText(box, Qt.AlignmentFlag.AlignLeft, elided)
-    foot = QRectF(_SIDE, paper.height() - 42, width, 14)
-    painter.drawText(foot, Qt.AlignmentFlag.AlignRight, f"page {number + 1} of {report.pages}")
-    painter.drawText(
-        foot,
-        Qt.AlignmentFlag.AlignLeft,
-        "Estimates from entered data: check against the maker's current data sheet.",
-    )
-    painter.setPen(line_pen(LIGHT.rule, 0.8))
-    painter.drawLine(int(_SIDE), 66, int(_SIDE + width), 66)
-    painter.restore()
+    width = report.paper.width() - 2 * _SIDE
+    bold, plain = print_font(AXIS, bold=True), print_font(AXIS)
+    mark_width = 200.0
+    head = QRectF(_SIDE, 36.0, width, 15.0)
+    _line(painter, head.adjusted(0, 0, -mark_width, 0), report.title, bold, LIGHT.ink)
+    _line(painter, head, report.mark, plain, LIGHT.second_ink, right=True)
+    _line(painter, head.translated(0, 16), report.facts, plain, LIGHT.second_ink)
+    painter.fillRect(QRectF(_SIDE, 72.0, width, 0.8), LIGHT.field_edge)
+    foot = QRectF(_SIDE, report.paper.height() - 44.0, width, 15.0)
+    _line(painter, foot, _FOOT_TEXT, plain, LIGHT.second_ink)
+    page = f"page {number + 1} of {report.pages}"
+    _line(painter, foot, page, plain, LIGHT.second_ink, right=True)
 
 
-def report_pdf(selection: Selection, assessment: Assessment, size: PageSize = "A4") -> bytes:
-    """The report as the content of a PDF file.
+def _line(
+    painter: QPainter, box: QRectF, text: str, font: QFont, colour: QColor, right: bool = False
+) -> None:
+    side = Qt.AlignmentFlag.AlignRight if right else Qt.AlignmentFlag.AlignLeft
+    painter.setFont(font)
+    painter.setPen(colour)
+    painter.drawText(box, side, elided(text, font, box.width()))
+
+
+# The file ---------------------------------------------------------------------------------
+
+
+def report_pdf(
+    selection: Selection, assessment: Assessment, options: ReportOptions = _ALL
+) -> bytes:
+    """The report as the content of a PDF file; needs neither window nor display.
 
     Raises
     ------
@@ -115,10 +151,17 @@ def report_pdf(selection: Selection, assessment: Assessment, size: PageSize = "A
     """
     application = QApplication.instance() or _offscreen_application()
     assert application is not None
-    report = report_of(selection, assessment, size)
+    report = report_of(selection, assessment, options)
     buffer = QBuffer()
     buffer.open(QIODevice.OpenModeFlag.WriteOnly)
-    writer = _writer(buffer, selection, assessment, size)
+    _paint_all(_writer(buffer, selection, reported(assessment, options), options.paper), report)
+    data = bytes(buffer.data().data())
+    assert data.startswith(b"%PDF")
+    assert data.rstrip().endswith(b"%%EOF")
+    return data
+
+
+def _paint_all(writer: QPdfWriter, report: Report) -> None:
     painter = QPainter(writer)
     try:
         for number in range(report.pages):
@@ -126,11 +169,7 @@ def report_pdf(selection: Selection, assessment: Assessment, size: PageSize = "A
                 writer.newPage()
             paint_page(painter, report, number)
     finally:
-        painter.end()
-    data = bytes(buffer.data().data())
-    assert data.startswith(b"%PDF")
-    assert data.rstrip().endswith(b"%%EOF")
-    return data
+        painter.end()  # a painter left open takes the process down
 
 
 def _offscreen_application() -> QApplication:
@@ -139,13 +178,13 @@ def _offscreen_application() -> QApplication:
 
 
 def _writer(
-    buffer: QBuffer, selection: Selection, assessment: Assessment, size: PageSize
+    buffer: QBuffer, selection: Selection, assessment: Assessment, paper: PageSize
 ) -> QPdfWriter:
     writer = QPdfWriter(buffer)
     writer.setResolution(_DPI)
     writer.setPageLayout(
         QPageLayout(
-            QPageSize(_SIZES[size]), QPageLayout.Orientation.Portrait, QMarginsF(0, 0, 0, 0)
+            QPageSize(_SIZES[paper]), QPageLayout.Orientation.Portrait, QMarginsF(0, 0, 0, 0)
         )
     )
     writer.setTitle(selection.title or "Selection report")
@@ -155,17 +194,3 @@ def _writer(
     writer.addFileAttachment("selection.json", selection_bytes(selection), "application/json")
     writer.addFileAttachment("results.json", results_json(assessment), "application/json")
     return writer
-
-
-def _head_lines(selection: Selection, assessment: Assessment) -> tuple[str, str]:
-    mark = assessment.fingerprint
-    groups = " ".join(mark[i : i + 4] for i in range(0, len(mark), 4))
-    first = selection.title or "Untitled selection"
-    parts = (
-        ("reference", selection.reference),
-        ("engineer", selection.engineer),
-        ("date", date.today().isoformat()),
-        (assessment.program, assessment.version),
-        ("fingerprint", groups),
-    )
-    return first, "   ·   ".join(f"{name} {value}" for name, value in parts if value)

@@ -21,6 +21,7 @@ class NameEntry(QLineEdit):
         super().__init__(parent)
         self._fault_of = fault_of
         self.setAccessibleName("Name of the candidate")
+        self.setAcceptDrops(False)  # a file dropped here is for the window
         self._note = FaultNote(parent)
         self.textChanged.connect(self._look)
         self.hide()

@@ -69,6 +69,7 @@ class NumberEntry(QLineEdit):
         self.setAccessibleName(f"{name}, {shown_in or unit}" if shown_in or unit else name)
         self.setAlignment(Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter)
         self.setMinimumWidth(40)
+        self.setAcceptDrops(False)  # a file dropped here is for the window
         self.textEdited.connect(self._on_text)
         self.returnPressed.connect(self._on_return)
 

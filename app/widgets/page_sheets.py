@@ -2,15 +2,17 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import QRectF, QSize, Qt
+from PySide6.QtCore import QSize, Qt
 from PySide6.QtGui import QPainter, QPaintEvent, QPixmap, QResizeEvent
 from PySide6.QtWidgets import QScrollArea, QVBoxLayout, QWidget
 
 from app.report.pdf import Report, paint_page
-from app.theme import LIGHT, theme
+from app.theme import LIGHT, TITLE, font, theme
 
 GAP = 12
 WIDEST = 760
+_FADED = 0.45
+_TOP_CENTRE = Qt.AlignmentFlag.AlignTop | Qt.AlignmentFlag.AlignHCenter
 
 
 class Sheet(QWidget):
@@ -22,13 +24,24 @@ class Sheet(QWidget):
         height = round(width * report.paper.height() / report.paper.width())
         self.setFixedSize(QSize(width, height))
         self.setAccessibleName(f"page {number + 1} of {report.pages}")
+        self._stale = False
         self._picture: QPixmap | None = None
+
+    def set_stale(self) -> None:
+        """Fade the page, take the marks off its verdicts, and say what it is."""
+        self._stale = True
+        self._picture = None
+        self.update()
 
     def paintEvent(self, event: QPaintEvent) -> None:
         if self._picture is None:
             self._picture = self._drawn()
         painter = QPainter(self)
         painter.drawPixmap(0, 0, self._picture)
+        if self._stale:
+            painter.setPen(LIGHT.stale)
+            painter.setFont(font(TITLE, bold=True))
+            painter.drawText(self.rect().adjusted(0, 8, 0, 0), _TOP_CENTRE, "stale")
 
     def _drawn(self) -> QPixmap:
         ratio = self.devicePixelRatioF()
@@ -39,13 +52,14 @@ class Sheet(QWidget):
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         scale = self.width() / self._report.paper.width()
         painter.scale(scale, scale)
-        paint_page(painter, self._report, self._number)
+        painter.setOpacity(_FADED if self._stale else 1.0)
+        paint_page(painter, self._report, self._number, marks=not self._stale)
         painter.end()
         return picture
 
 
 class PageSheets(QScrollArea):
-    """All pages of a report; a veil over them while they are stale."""
+    """All pages of a report; faded, and without the marks of verdicts, while they are stale."""
 
     def __init__(self) -> None:
         super().__init__()
@@ -56,7 +70,7 @@ class PageSheets(QScrollArea):
         self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
         self._report: Report | None = None
         self._stale = False
-        self._column = _Column(self)
+        self._column = _Column()
 
     def show_report(self, report: Report | None) -> None:
         """Show other pages, at the place in them where the last ones were looked at."""
@@ -66,7 +80,8 @@ class PageSheets(QScrollArea):
 
     def show_stale(self) -> None:
         self._stale = True
-        self._column.update()
+        for sheet in self.sheets:
+            sheet.set_stale()
 
     @property
     def sheets(self) -> list[Sheet]:
@@ -83,7 +98,7 @@ class PageSheets(QScrollArea):
     def _fill(self) -> None:
         place = self.verticalScrollBar().value()
         self._filled_at = self._width()
-        self._column = _Column(self)
+        self._column = _Column()
         layout = QVBoxLayout(self._column)
         layout.setContentsMargins(GAP, GAP, GAP, GAP)
         layout.setSpacing(GAP)
@@ -104,13 +119,5 @@ class PageSheets(QScrollArea):
 class _Column(QWidget):
     """The ground under the sheets."""
 
-    def __init__(self, sheets: PageSheets) -> None:
-        super().__init__()
-        self._sheets = sheets
-
     def paintEvent(self, event: QPaintEvent) -> None:
-        painter = QPainter(self)
-        painter.fillRect(QRectF(event.rect()), theme().shade)
-        if self._sheets.stale:
-            painter.setPen(theme().stale)
-            painter.drawText(event.rect(), Qt.AlignmentFlag.AlignTop, "stale")
+        QPainter(self).fillRect(event.rect(), theme().shade)

@@ -9,7 +9,6 @@ from PySide6.QtWidgets import QHeaderView
 
 from app.theme import AXIS
 from app.widgets.plain_table import PlainTable
-from app.widgets.strip_scale import in_figures
 from engine.bridge import POSITIONS
 from engine.stress import BridgeStress, DiodeStress, PositionStress, SwitchingEvent, SwitchStress
 
@@ -21,7 +20,7 @@ DENSE = (
     f"QHeaderView::section {{ padding: 0; font-size: {AXIS}px; }}"
 )
 POSITION_HEADS = ("", "avg A", "rms A", "peak A", "block V")
-EVENT_HEADS = ("angle °", "", "change", "current", "voltage")
+EVENT_HEADS = ("angle °", "", "change", "A", "V")
 Row = tuple[str, ...]
 
 
@@ -139,12 +138,12 @@ class EventTable(PlainTable):
 
 
 def event_row(event: SwitchingEvent) -> Row:
-    """Angle, device, what happens, current and voltage."""
+    """Angle, device, what happens, current in A and voltage in V."""
     number = POSITIONS.index(event.position) + 1
     return (
         f"{event.angle_deg:.1f}",
         event.position if event.device == "switch" else f"D{number}",
         event.kind,
-        in_figures(event.current_A, "A"),
-        in_figures(event.voltage_V, "V"),
+        _in(event.current_A),
+        _in(event.voltage_V),
     )

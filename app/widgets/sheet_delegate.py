@@ -19,6 +19,7 @@ from app.widgets.sheet_model import Index, SheetModel
 from app.widgets.sheet_rows import Cell
 from app.widgets.verdict_mark import SIZE, draw_verdict_mark
 from engine.checks import Check
+from engine.quantities import shown
 from parts_library.rating_sheet import Rating, sheet_figure
 
 BASIS_WORDS = {"typical": "typ.", "read from curve": "curve", "assumed": ""}
@@ -242,7 +243,9 @@ class SheetDelegate(QStyledItemDelegate):
         painter.setFont(font(TABLE))
         painter.setPen(theme().stale if stale else theme().second_ink)
         if check.applied is not None:
-            self._figure(painter, rect, LAYOUT.applied, f"{sheet_figure(rating, check.applied):g}")
+            self._figure(
+                painter, rect, LAYOUT.applied, applied_text(rating, check.applied, check.unit)
+            )
         painter.setPen(theme().stale if stale else theme().ink)
         if check.headroom_pct is not None:
             self._figure(painter, rect, LAYOUT.headroom, headroom_text(check.headroom_pct))
@@ -270,6 +273,13 @@ class SheetDelegate(QStyledItemDelegate):
         painter.setPen(pen)
         below = span.center().y() + 8
         painter.drawLine(QPointF(span.left(), below), QPointF(span.right(), below))
+
+
+def applied_text(rating: Rating, applied: float, unit: str) -> str:
+    """In the sheet's unit; a row of another unit beside a rating (a pulse at I_L) keeps its own."""
+    if unit != rating.unit:
+        return shown(applied, unit, digits=3)
+    return f"{sheet_figure(rating, applied):g}"
 
 
 def headroom_text(headroom_pct: float) -> str:

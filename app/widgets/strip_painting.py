@@ -24,7 +24,7 @@ RIGHT = Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter
 TEXT_ROW = 12.0
 LOW_LANE = 54.0
 """Height below which a scale has room for two figures, 0 and one more."""
-DIODE_DASH = (3.0, 2.0)
+DIODE_DASH = (5.0, 3.0)
 HATCH_APART = 7.0
 _STRAIGHT_PX = 0.05
 _THINNINGS = 4

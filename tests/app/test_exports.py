@@ -12,6 +12,7 @@ from app import exports
 from app.exports import Exports
 from app.looked_at import LookedAt
 from app.picture import Picture, picture_of
+from app.report.options import ReportOptions
 from app.selection_file import demo_selection
 from tests.app.answers import Answers
 
@@ -48,7 +49,7 @@ def test_the_report_is_a_pdf_under_the_name_of_the_document(
 ) -> None:
     answers.save_file = tmp_path / "winch"
     with qtbot.waitSignal(writer.written, timeout=60_000):
-        writer.report(picture, "winch", "A4")
+        writer.report(picture, "winch", ReportOptions())
     assert answers.said == ["save winch.pdf"]
     assert (tmp_path / "winch.pdf").read_bytes().startswith(b"%PDF")
 
@@ -87,5 +88,5 @@ def test_giving_up_the_choice_writes_nothing(
     qtbot: QtBot, writer: Exports, picture: Picture
 ) -> None:
     with qtbot.assertNotEmitted(writer.busy):
-        writer.report(picture, "winch", "A4")
+        writer.report(picture, "winch", ReportOptions())
         writer.tables(picture)

@@ -7,7 +7,7 @@ from pathlib import Path
 
 import pytest
 from PySide6.QtCore import Qt
-from PySide6.QtWidgets import QApplication, QLineEdit, QWidget
+from PySide6.QtWidgets import QApplication, QLineEdit, QPlainTextEdit, QWidget
 from pytestqt.qtbot import QtBot
 
 from app.main_window import MainWindow
@@ -172,6 +172,14 @@ def test_every_widget_of_every_page_that_takes_the_focus_has_a_name(window: Main
             if takes_it and widget.isVisible() and not named:
                 nameless.append(f"{title}: {type(widget).__name__} {widget.objectName()}")
     assert nameless == []
+
+
+def test_a_file_dropped_on_a_field_goes_to_the_window(window: MainWindow) -> None:
+    for title in window.page_titles:
+        window.show_page(title)
+        fields = [w for kind in (QLineEdit, QPlainTextEdit) for w in window.findChildren(kind)]
+        assert fields
+        assert [(title, f.accessibleName()) for f in fields if f.acceptDrops()] == []
 
 
 @pytest.mark.parametrize("width", [1100, 1440])

@@ -68,6 +68,18 @@ def test_link_power_is_load_power_on_ten_thousand_duties(seed: int) -> None:
     assert energy_error(random_bridge(Random(seed), longest_periods=100.0)) <= 1e-11
 
 
+@settings(max_examples=120, deadline=None)
+@given(SEEDS)
+def test_branches_a_million_apart_are_solved(seed: int) -> None:
+    """R from 1 mΩ to 1 kΩ and L from 1 µH to 10 H, or none, in one load: energy to 1e-11."""
+    random = Random(seed)
+    bridge = random_bridge(random)
+    R = [10.0 ** random.uniform(-3.0, 3.0) for _ in range(3)]
+    L = [random.choice([0.0, 10.0 ** random.uniform(-6.0, 1.0)]) for _ in range(3)]
+    apart = replace(bridge, resistance_ohm=(R[0], R[1], R[2]), inductance_H=(L[0], L[1], L[2]))
+    assert energy_error(apart) <= 1e-11
+
+
 @settings(max_examples=25, deadline=None)
 @given(SEEDS, st.floats(0.1, 10.0))
 def test_currents_scale_with_the_link_voltage(seed: int, factor: float) -> None:

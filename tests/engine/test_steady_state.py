@@ -25,7 +25,7 @@ DELTA = replace(STAR, connection="delta")
 @pytest.mark.parametrize(
     ("bridge", "key", "reason"),
     [
-        (replace(STAR, emf_peak_V=(0.0, 1.0, 0.0)), "load.emf_peak_V", "EMF are not solved yet"),
+        (replace(STAR, emf_peak_V=(0.0, 1.0, 0.0)), "load.emf_peak_V", "does not solve loads"),
         (
             replace(STAR, resistance_ohm=(0.0, 1.0, 1.0), inductance_H=(0.0, 0.1, 0.1)),
             "load.resistance_ohm",

@@ -148,6 +148,16 @@ def test_losses_are_those_of_the_worst_switch_and_the_worst_diode():
     assert result.diode_losses.on_state_W == pytest.approx(result.diode_loss_W)
 
 
+def test_the_first_diode_is_not_taken_for_a_switch_however_much_it_loses():
+    made = stress({"T1": {"diode": {"current_avg_A": 40.0, "current_rms_A": 80.0}}})
+    switch = msgspec.structs.replace(THYRISTOR, I_L_A=None)
+    result = candidate_result(candidate(switch), solved_by_hand(made, selection()), COMMON_PRACTICE)
+    assert result.switch_loss_W == pytest.approx(11.0 + 6e-3 * 22.0**2)
+    assert result.diode_loss_W == pytest.approx(44.0 * 0.9 + 8e-3 * 88.0**2)
+    assert result.switch_losses.on_state_W == pytest.approx(result.switch_loss_W)
+    assert result.diode_losses.on_state_W == pytest.approx(result.diode_loss_W)
+
+
 def test_where_the_diode_is_the_hotter_one_its_temperature_is_the_peak():
     diode = msgspec.structs.replace(FREEWHEEL, Rth_jc_K_per_W=30.0)
     result = candidate_result(candidate(diode=diode), SOLVED, COMMON_PRACTICE)

@@ -19,13 +19,18 @@ from tests.engine.hand_made import THYRISTOR, candidate, selection
 IDS = ("switch.I_L", "switch.I_H", "switch.gate_pulse")
 
 
-def judged(pulse=None, load=None, conduction_deg=120.0, frequency_Hz=50.0, **ratings):
-    """The three rows at one link voltage of 542 V, one frequency, and light load 0.2."""
+def judged(pulse=None, load=None, conduction_deg=120.0, blanking_s=0.0, voltage_V=542.0, **ratings):
+    """The three rows at one link voltage, 50 Hz, and light load 0.2."""
     switch = msgspec.structs.replace(THYRISTOR, **ratings)
     document = selection(
         candidate(switch),
-        supply=Supply(voltage_V=542.0),
-        gating=Gating(conduction_deg=conduction_deg, frequency_Hz=frequency_Hz, pulse=pulse),
+        supply=Supply(voltage_V=voltage_V),
+        gating=Gating(
+            conduction_deg=conduction_deg,
+            frequency_Hz=50.0,
+            blanking_s=blanking_s,
+            pulse=pulse,
+        ),
         load=load or Load(connection="star", resistance_ohm=9.0, inductance_H=0.012),
     )
     case = case_of(document.candidates[0], solved(duty_of(document)), COMMON_PRACTICE)
@@ -91,6 +96,23 @@ def test_holding_counts_from_the_end_of_the_pulse():
 def test_a_block_is_as_long_as_the_window_whatever_width_stands_beside_it():
     check = judged(GatePulse(form="block", width_s=1e-5))["switch.gate_pulse"]
     assert check.allowed == pytest.approx(1 / 3 / 50.0)
+
+
+def test_blanking_shortens_the_window():
+    check = judged(blanking_s=1e-3)["switch.gate_pulse"]
+    assert check.allowed == pytest.approx(1 / 3 / 50.0 - 1e-3)
+    assert check.at_least
+
+
+# 1.5 V less two drops of 1 V leave nothing, 2.5 V leave 0.5 V: 0.2 · 0.5/18 A.
+def test_a_link_voltage_below_the_drops_latches_nothing():
+    none = judged(load=RESISTIVE, voltage_V=1.5)
+    assert none["switch.I_L"].allowed == 0.0
+    assert none["switch.I_L"].verdict == "undersized"
+    assert none["switch.gate_pulse"].reason == "the latching current is never reached"
+    some = judged(load=RESISTIVE, voltage_V=2.5, I_L_A=1e-3)
+    assert some["switch.I_L"].allowed == pytest.approx(0.2 * 0.5 / 18.0)
+    assert some["switch.gate_pulse"].verdict == "adequate"
 
 
 def test_a_pulse_longer_than_the_window_lasts_no_longer_than_it():

@@ -261,6 +261,11 @@ def test_forced_turn_off_needs_the_dead_interval_to_outlast_the_corrected_time()
     assert "until a circuit is designed" in check.how
 
 
+def test_a_time_stated_just_above_a_low_reverse_voltage_is_corrected():
+    check = judged(changed(THYRISTOR, tq_reverse_V=5.5))["switch.tq_dead"]
+    assert check.applied == pytest.approx(150e-6 * 2.25)
+
+
 def test_a_time_stated_at_a_low_reverse_voltage_is_not_corrected_for_it():
     check = judged(changed(THYRISTOR, tq_reverse_V=5.0))["switch.tq_dead"]
     assert check.applied == pytest.approx(150e-6 * 1.5)
@@ -281,6 +286,18 @@ def test_a_junction_hotter_than_the_times_own_condition_lengthens_it():
     stated_C = JUNCTION_C - 10.0
     check = judged(changed(THYRISTOR, tq_Tvj_C=stated_C))["switch.tq_dead"]
     assert check.applied == pytest.approx(150e-6 * 2.25 * 1.1)
+
+
+def test_half_a_kelvin_above_the_times_own_condition_already_lengthens_it():
+    check = judged(changed(THYRISTOR, tq_Tvj_C=JUNCTION_C - 0.5))["switch.tq_dead"]
+    assert check.applied == pytest.approx(150e-6 * 2.25 * 1.005)
+
+
+def test_a_junction_that_runs_away_leaves_the_time_to_its_own_row():
+    switch = changed(THYRISTOR, leakage_A=5.0, Rth_ch_K_per_W=2.0, tq_Tvj_C=115.0)
+    checks = judged(switch)
+    assert checks["switch.Tvj"].verdict == "undersized"
+    assert checks["switch.tq_dead"].applied == pytest.approx(150e-6 * 2.25)
 
 
 def test_a_junction_cooler_than_the_times_own_condition_does_not_shorten_it():
@@ -325,6 +342,32 @@ def test_blanking_must_outlast_the_spread_of_delays():
     assert check.applied == pytest.approx(720e-9)
     assert check.allowed == pytest.approx(1e-3)
     assert check.would_do == pytest.approx(1e-3 * 0.9 / 1.2 - 100e-9)
+
+
+def test_a_driver_skew_and_a_package_inductance_that_are_not_entered_count_as_none():
+    made = stress(events=(event(current_A=30.0),))
+    checks = judged(changed(IGBT, driver_skew_s=None), made=made)
+    assert checks["switch.blanking"].applied == pytest.approx(1.2 * 500e-9)
+    assert checks["switch.V_CES"].applied == pytest.approx(594.0 + 79.2)
+
+
+def test_a_switch_that_turns_nothing_off_has_no_overshoot_up_to_the_voltage_itself():
+    checks = judged(changed(IGBT, V_CES_V=594.0))
+    assert checks["switch.V_CES"].applied == 594.0
+    assert checks["switch.turn_off_current"].applied == 0.0
+    assert checks["switch.turn_off_current"].verdict == "adequate"
+    assert checks["switch.turn_off_current"].would_do is None
+
+
+def test_blanking_is_a_matter_of_the_gating_and_of_no_position():
+    check = judged(IGBT)["switch.blanking"]
+    assert (check.position, check.at_least) == (None, True)
+
+
+@pytest.mark.parametrize("check_id", ["switch.I_C", "switch.Tvj", "diode.I_FAV", "diode.Tvj"])
+def test_what_rests_on_temperatures_needs_a_heatsink(check_id):
+    check = judged(IGBT, cooling=Cooling(ambient_C=40.0))[check_id]
+    assert check.needs == ("cooling.sink_K_per_W",)
 
 
 def test_without_a_dead_interval_no_delay_would_do():

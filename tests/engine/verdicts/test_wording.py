@@ -7,7 +7,7 @@ import pytest
 from engine.corners import solved
 from engine.duty import duty_of
 from engine.rule_sets import COMMON_PRACTICE
-from engine.selection import Gating
+from engine.selection import Gating, Load
 from engine.verdicts.candidate import candidate_result
 from engine.verdicts.wording import celsius, named, number, percent, quantity
 from tests.engine.hand_made import IGBT, THYRISTOR, candidate, event, selection, stress
@@ -79,6 +79,16 @@ def test_a_how_line_puts_the_numbers_into_the_law(check_id, switch, how):
     assert judged(switch, made=stress(events=off))[check_id].how == how
 
 
+def test_the_how_line_of_a_direct_current_has_no_form_factor_in_its_rated_loss():
+    flat = {f"T{n}": {"switch": {"current_peak_A": 12.0}} for n in range(1, 7)}
+    check = judged(changed(IGBT, I_C_A=37.5), made=stress(flat))["switch.I_C"]
+    assert check.how == (
+        "average 11 A, form factor 2; 37.5 A direct at a case of 80.0 °C: 0.9 V × 37.5 A + "
+        "15 mΩ × (37.5 A)² = 54.84 W; with this form factor the same loss at 23.65 A, "
+        "× 0.8 = 18.92 A; headroom 41.9 %"
+    )
+
+
 def test_a_how_line_names_the_temperature_that_lengthens_the_turn_off_time():
     how = judged(changed(THYRISTOR, tq_Tvj_C=40.0))["switch.tq_dead"].how
     assert "(junction 19.74 K above the one t_q is stated for)" in how
@@ -94,10 +104,21 @@ def test_the_how_line_of_a_dead_interval_shows_its_law_and_how_far_it_holds():
     )
 
 
-def test_the_how_line_of_a_dead_interval_adds_the_blanking():
-    gating = Gating(conduction_deg=180.0, frequency_Hz=50.0, blanking_s=1e-3)
-    result = candidate_result(
-        candidate(), solved(duty_of(selection(gating=gating))), COMMON_PRACTICE
-    )
+@pytest.mark.parametrize(
+    ("conduction_deg", "blanking_s", "part"),
+    [
+        (180.0, 1e-3, "(180° − 180°)/(360° × 50 Hz) + 1 ms blanking = 1 ms; headroom"),
+        (180.0, 3e-4, "(180° − 180°)/(360° × 50 Hz) + 300 µs blanking = 300 µs; headroom"),
+        (150.0, 1e-3, "(180° − 150°)/(360° × 50 Hz) + 1 ms blanking = 2.667 ms; headroom"),
+        (150.0, 150e-6 * 1.5 * 1.5, "+ 337.5 µs blanking = 2.004 ms; headroom"),
+        # 30°/360° in 337.5 − 37.5 = 300 µs: 277.8 Hz.
+        (150.0, 37.5e-6, "+ 37.5 µs blanking = 1.704 ms, enough up to 277.8 Hz; headroom"),
+    ],
+)
+def test_the_how_line_of_a_dead_interval_adds_the_blanking(conduction_deg, blanking_s, part):
+    gating = Gating(conduction_deg=conduction_deg, frequency_Hz=50.0, blanking_s=blanking_s)
+    load = Load(connection="star", resistance_ohm=9.0, inductance_H=0.0012)
+    document = selection(gating=gating, load=load)
+    result = candidate_result(candidate(), solved(duty_of(document)), COMMON_PRACTICE)
     check = next(one for one in result.checks if one.id == "switch.tq_dead")
-    assert "(180° − 180°)/(360° × 50 Hz) + 1 ms blanking = 1 ms; headroom" in check.how
+    assert part in check.how
