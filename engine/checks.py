@@ -46,6 +46,8 @@ class Check(Result, frozen=True, kw_only=True):
     at_least: bool = False
     """Whether applied is what is needed and allowed what there is (times, latching, holding)."""
     basis: str | None = None
+    applies: bool = True
+    """False where the rating does not matter to this duty: nothing is missing then."""
     needs: tuple[str, ...] = ()
     how: str = ""
 

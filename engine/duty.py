@@ -48,6 +48,16 @@ USUAL: dict[str, Any] = {
 }
 """Values taken for entries that nobody made; shown as assumed wherever they are used."""
 
+_ONLY_WITH_EMF = (
+    "supply.takes_power_back",
+    "load.emf_peak_V",
+    "load.emf_lag_deg",
+    "load.emf_shape",
+    "load.emf_follows_frequency",
+    "load.emf_follows_supply",
+    "load.scaling",
+)
+
 SAME_AS = {
     "supply.voltage_low_V": "supply.voltage_V",
     "supply.voltage_high_V": "supply.voltage_V",
@@ -110,8 +120,14 @@ def value_of(selection: Selection, key: str) -> Any:
 
 
 def assumed_keys(selection: Selection) -> tuple[str, ...]:
-    """Keys of the duty whose value nobody entered or confirmed."""
-    return tuple(key for key in (*USUAL, *SAME_AS) if entry(selection, key) is None)
+    """Keys of the duty that matter to it and whose value nobody entered or confirmed."""
+    no_emf = not any(as_triple(value_of(selection, "load.emf_peak_V")))
+    passed_over = _ONLY_WITH_EMF if no_emf else ()
+    return tuple(
+        key
+        for key in (*USUAL, *SAME_AS)
+        if key not in passed_over and entry(selection, key) is None
+    )
 
 
 def missing_keys(selection: Selection) -> tuple[str, ...]:

@@ -67,7 +67,7 @@ def worst_by_page(result: CandidateResult, pages: Collection[str]) -> dict[str, 
     worst: dict[str, Verdict] = {}
     for check in result.checks:
         page = shown_on(check, pages)
-        if page != REPORT:
+        if page != REPORT and check.applies:
             worst[page] = min(check.verdict, worst.get(page, "adequate"), key=VERDICTS.index)
     return worst
 

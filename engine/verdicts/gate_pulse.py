@@ -20,7 +20,7 @@ from engine.steady_state import SteadyState
 from engine.stress_table import Array
 from engine.verdicts.case import Case
 from engine.verdicts.comparison import Comparison, Place
-from engine.verdicts.row import Finding, Open, Row
+from engine.verdicts.row import Finding, Row, does_not_apply
 from engine.verdicts.wording import quantity
 
 DROP_UNLESS_STATED_V = 2.0
@@ -86,7 +86,7 @@ def holding(case: Case, row: Row) -> Finding:
     there_A = _least_after_pulse(case.solved) * _current_share(case)
     there_A[~table.forced] = np.nan
     if np.isnan(there_A).all():
-        return Open("does not apply: no position turns off forced")
+        return does_not_apply("no position turns off forced")
 
     def how(place: Place) -> str:
         return (

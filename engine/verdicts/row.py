@@ -27,6 +27,7 @@ class Open:
 
     reason: str
     needs: tuple[str, ...] = ()
+    applies: bool = True
 
 
 Finding = Comparison | Open | tuple[Comparison, ...]
@@ -69,6 +70,11 @@ class Row:
         return case.rules.fraction(self.id, type(self.device(case)).__name__.lower())
 
 
+def does_not_apply(why: str) -> Open:
+    """A row whose rating does not matter to the duty."""
+    return Open(f"does not apply: {why}", applies=False)
+
+
 def waits_for(what: str) -> Judge:
     """Judge of a row whose calculation is not part of the program yet."""
     return lambda case, row: Open(f"waits for {what}")
@@ -78,7 +84,7 @@ def check_of(row: Row, case: Case) -> Check:
     """Judge one row of a candidate."""
     not_applying = row.applies(case)
     if not_applying is not None:
-        return _open_check(row, Open(f"does not apply: {not_applying}"))
+        return _open_check(row, does_not_apply(not_applying))
     needs = missing_of(row, case)
     if needs:
         return _open_check(row, Open(f"needs {', '.join(map(named, needs))}", needs))
@@ -89,7 +95,7 @@ def check_of(row: Row, case: Case) -> Check:
     judged = [(one, worst_of(one, case.rules.adequate_share)) for one in comparisons]
     worsts = [(one, worst) for one, worst in judged if worst is not None]
     if not worsts:
-        return _open_check(row, Open("does not apply: no position carries current"))
+        return _open_check(row, does_not_apply("no position carries current"))
     comparison, worst = min(worsts, key=lambda pair: _headroom(pair[1]))
     return _compared(row, case, comparison, worst, _most_demanding([w for _, w in worsts]))
 
@@ -109,6 +115,7 @@ def _open_check(row: Row, why: Open) -> Check:
         unit=row.unit,
         verdict="not assessed",
         reason=why.reason,
+        applies=why.applies,
         needs=why.needs,
         how=why.reason,
     )
