@@ -41,6 +41,14 @@ class Bridge:
         return 1.0 / self.frequency_Hz
 
     @property
+    def is_balanced(self) -> bool:
+        """Whether the three branches are alike: each sixth of a period then mirrors the last."""
+        return all(
+            len(set(branches)) == 1
+            for branches in (self.resistance_ohm, self.inductance_H, self.emf_peak_V)
+        )
+
+    @property
     def dead_interval_s(self) -> float:
         """From one switch's gate-off to the gate-on of the other switch of its leg."""
         return (180.0 - self.conduction_deg) / 360.0 / self.frequency_Hz + self.blanking_s

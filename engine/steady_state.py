@@ -100,14 +100,13 @@ def _periodic_start(bridge: Bridge) -> Triple:
     if not any(bridge.inductance_H):
         return 0.0, 0.0, 0.0
     a, b, c = bridge.inductance_H
-    balanced = len(set(bridge.resistance_ohm)) == 1 and a == b == c
-    steps = gate_steps(bridge, bridge.period_s / (6.0 if balanced else 2.0))
+    steps = gate_steps(bridge, bridge.period_s / (6.0 if bridge.is_balanced else 2.0))
 
     def mapped(x: Triple) -> _Image:
         walk = Walk(bridge, steps, x)
         p, q, r = walk.currents
         rows = walk.sensitivity
-        if balanced:
+        if bridge.is_balanced:
             p, q, r = r, p, q
             rows = rows[2], rows[0], rows[1]
         image = (-p, -q, -r)

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import Signal
+from PySide6.QtCore import QSize, Signal
 from PySide6.QtGui import QResizeEvent
 from PySide6.QtWidgets import QStackedWidget, QVBoxLayout, QWidget
 
@@ -107,6 +107,10 @@ class DutySide(QWidget):
         self.positions.put_diodes_together(narrow)
         self.events.leave_out_voltage(narrow)
         self._arrange()
+
+    def minimumSizeHint(self) -> QSize:
+        """Low enough for any window: the lists give way."""
+        return QSize(self.width(), self.drawing.minimumHeight() + self.read_out.height())
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         self._arrange()

@@ -10,6 +10,9 @@ from PySide6.QtGui import QPainter
 
 from engine.checks import Verdict
 
+_NEARLY_EMPTY = 1.0 / 3.0
+"""Share of a page below which it is filled further, also where a new one is asked for."""
+
 Paint = Callable[[QPainter, float], None]
 """Paints a slice whose top lies at a height in px."""
 Mark = tuple[Verdict, QRectF]
@@ -20,6 +23,7 @@ Mark = tuple[Verdict, QRectF]
 class Slice:
     """A strip over the whole width that no page break divides.
 
+    `new_page`: begins a page, unless hardly anything stands on the last one.
     `with_next`: never the last of a page. `gap`: white space, which vanishes at the top of a
     page. `head` is painted again above the slice where it begins a page. `title`: the section
     that begins here. `mark` is painted with it unless
@@ -64,7 +68,8 @@ def pages_of(slices: Iterable[Slice], height: float) -> tuple[Page, ...]:
     top = 0.0
     for run in _runs(slices):
         length = sum(each.height for each in run)
-        if pages[-1] and (run[0].new_page or top + length > height):
+        asked = run[0].new_page and top > _NEARLY_EMPTY * height
+        if pages[-1] and (asked or top + length > height):
             pages.append([])
             top = 0.0
         for each in run:

@@ -62,7 +62,7 @@ class _Layout:
 
     def slices(self) -> Iterator[Slice]:
         for number, section in enumerate(self._sections):
-            if number and not section.new_page:
+            if number:
                 yield white(_SECTION_GAP)
             blocks = list(self._blocks(section, number))
             yield from kept_together(blocks) if section.whole else blocks

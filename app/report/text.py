@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from functools import lru_cache
 from math import ceil
+from threading import get_ident
 
 from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QColor, QFont, QFontMetricsF, QPainter, QTextLayout, QTextOption
@@ -15,13 +16,18 @@ LEADING = 1.22
 """Distance of lines over the size of type."""
 
 
-@lru_cache(maxsize=32)
 def print_font(size: int, bold: bool = False, italic: bool = False) -> QFont:
     """Type for print.
 
     Without joined letters: who searches for 'fingerprint' would not find them. Without hinting
     lines break on the screen where they do on paper.
     """
+    return _print_font(size, bold, italic, get_ident())
+
+
+@lru_cache(maxsize=64)
+def _print_font(size: int, bold: bool, italic: bool, thread: int) -> QFont:
+    # Reports are also made in the background, and threads must not share a QFont.
     made = font(size, bold, italic)
     made.setFeature(QFont.Tag("liga"), 0)
     made.setHintingPreference(QFont.HintingPreference.PreferNoHinting)

@@ -177,9 +177,13 @@ def _time_to_latch(case: Case, latching_A: float) -> Array:
 
 
 def _for_each(solved: SolvedDuty, of: Callable[[SteadyState, int, int], float | None]) -> Array:
-    """A figure of every state and position, ∞ where there is none."""
-    found = [
-        [of(state, point, position) for position in range(len(POSITIONS))]
-        for point, state in enumerate(solved.states.values())
-    ]
-    return np.array([[np.inf if one is None else one for one in row] for row in found])
+    """A figure of every state and position, ∞ where there is none.
+
+    Positions that are alike are asked once: all six of a balanced bridge, else opposite ones.
+    """
+    found = []
+    for point, state in enumerate(solved.states.values()):
+        apart = 1 if state.bridge.is_balanced else 3
+        row = [of(state, point, position) for position in range(apart)]
+        found.append([np.inf if one is None else one for one in row] * (len(POSITIONS) // apart))
+    return np.array(found)

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
-
 import pytest
 from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QApplication
@@ -22,14 +20,14 @@ UNLIKE = with_load(resistance_ohm=(9.0, 12.0, 5.0), inductance_H=0.012)
 
 
 @pytest.fixture
-def drawing(qtbot: QtBot, qapp: QApplication) -> Iterator[BridgeDrawing]:
+def drawing(qtbot: QtBot, qapp: QApplication) -> BridgeDrawing:
     apply_theme(qapp, "light")
     drawing = BridgeDrawing(AngleCursor())
     qtbot.addWidget(drawing)
     drawing.resize(296, 320)
     drawing.show_picture(solved())
     drawing.show()
-    yield drawing
+    return drawing
 
 
 def asked(qtbot: QtBot, drawing: BridgeDrawing, key: Qt.Key) -> int:

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
-
 import pytest
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QGuiApplication
@@ -30,7 +28,7 @@ def picture() -> Picture:
 
 
 @pytest.fixture
-def page(qtbot: QtBot, qapp: QApplication, picture: Picture) -> Iterator[DutyPage]:
+def page(qtbot: QtBot, qapp: QApplication, picture: Picture) -> DutyPage:
     apply_theme(qapp, "light")
     page = DutyPage(OpenSelection(SELECTION))
     qtbot.addWidget(page)
@@ -39,7 +37,7 @@ def page(qtbot: QtBot, qapp: QApplication, picture: Picture) -> Iterator[DutyPag
     page.show()
     page.activateWindow()
     qtbot.waitActive(page)
-    yield page
+    return page
 
 
 def click_row(qtbot: QtBot, table: object, row: int) -> None:

@@ -52,10 +52,15 @@ def test_a_head_is_repeated_where_its_row_begins_a_page() -> None:
 
 
 def test_a_new_page_begins_where_it_is_asked_for() -> None:
-    slices = [strip(10.0), strip(10.0, new_page=True, title="second")]
+    slices = [strip(40.0), strip(10.0, new_page=True, title="second")]
     pages = pages_of(slices, 100.0)
-    assert heights(pages) == [[10.0], [10.0]]
+    assert heights(pages) == [[40.0], [10.0]]
     assert pages_of_titles(pages) == {"second": 2}
+
+
+def test_a_page_with_hardly_anything_on_it_is_filled_further() -> None:
+    slices = [strip(30.0), strip(10.0, new_page=True, title="second")]
+    assert heights(pages_of(slices, 100.0)) == [[30.0, 10.0]]
 
 
 def test_no_slice_is_lost_and_none_overlaps() -> None:

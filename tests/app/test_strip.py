@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
+
 import numpy as np
 import pytest
 
@@ -87,7 +89,7 @@ def test_the_head_names_what_conducts_over_the_whole_period() -> None:
     assert parts[0][2] == "T1 T6 D2"
     assert parts[0][0] == 0.0
     assert parts[-1][1] == pytest.approx(360.0)
-    assert all(a[1] == pytest.approx(b[0]) for a, b in zip(parts, parts[1:], strict=False))
+    assert all(a[1] == pytest.approx(b[0]) for a, b in pairwise(parts))
 
 
 # Intervals ------------------------------------------------------------------------------

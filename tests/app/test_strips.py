@@ -185,7 +185,7 @@ def test_a_strip_is_drawn_as_vectors_with_its_names_as_text(qapp: QApplication) 
     assert "Link current" not in svg
     renderer = QSvgRenderer(QByteArray(svg.encode()))
     assert renderer.isValid()
-    assert renderer.defaultSize().width() == 600
+    assert renderer.viewBoxF().width() == 600.0
 
 
 # Other states ---------------------------------------------------------------------------
