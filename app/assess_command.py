@@ -81,6 +81,7 @@ def _write_report(selection: Selection, assessment: Assessment, path: Path) -> N
 
     name_missing_libraries()
     os.environ.setdefault("QT_QPA_PLATFORM", "offscreen")
+    os.environ.setdefault("QT_HASH_SEED", "0")  # equal input, equal file
     from app.report.pdf import report_pdf
 
     write_or_refuse(path, report_pdf(selection, assessment))

@@ -26,7 +26,9 @@ LOW_LANE = 54.0
 """Height below which a scale has room for two figures, 0 and one more."""
 DIODE_DASH = (5.0, 3.0)
 HATCH_APART = 7.0
-_STRAIGHT_PX = 0.05
+FEW = 40
+"""So few points are not worth thinning."""
+_STRAIGHT_PX = 0.1
 _THINNINGS = 4
 _void_pointer: Any = (
     shiboken6.VoidPtr
@@ -88,8 +90,10 @@ def y_of(room: QRectF, scale: Scale, value: float) -> float:
 
 def thinned(x: Array, y: Array) -> tuple[Array, Array]:
     """Without the points that lie on the line between their neighbours to a part of a pixel."""
+    level = np.concatenate([[False], (y[1:-1] == y[:-2]) & (y[1:-1] == y[2:]), [False]])
+    x, y = x[~level], y[~level]
     for _ in range(_THINNINGS):
-        if len(x) < 5:
+        if len(x) < FEW:
             break
         dx, dy = x[2::2] - x[:-2:2], y[2::2] - y[:-2:2]
         off = np.abs(dx * (y[1:-1:2] - y[:-2:2]) - dy * (x[1:-1:2] - x[:-2:2]))

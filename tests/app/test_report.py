@@ -274,3 +274,13 @@ def test_an_incomplete_document_has_no_pages(page: ReportPage) -> None:
     page.show_incomplete(("supply.voltage_V",))
     assert not page.sheets.sheets
     assert not page.save.isEnabled()
+
+
+def test_a_line_of_the_list_leads_to_its_entry(qtbot, page: ReportPage) -> None:
+    bare = with_entry(demo_selection(), "candidates.1.switch.tq_s", None)
+    page.show_picture(picture_of(bare, LookedAt()))
+    lines = {button.text(): button for button in page.findChildren(QPushButton)}
+    missing = lines[f"{bare.candidates[1].name}: t_q missing"]
+    with qtbot.waitSignal(page.asked) as asked:
+        qtbot.mouseClick(missing, Qt.MouseButton.LeftButton)
+    assert asked.args == ["candidates.1.switch.tq_s"]

@@ -95,9 +95,14 @@ def test_the_blocks_of_a_sheet_come_in_one_order(kind: Kind) -> None:
     assert places == sorted(places)
 
 
-def test_usual_conditions_are_conditions() -> None:
+def test_only_conditions_and_the_scaling_of_energies_have_usual_figures() -> None:
     conditions = {r.key for sheet in SHEETS.values() for r in sheet if r.condition_of}
-    assert set(USUAL_CONDITIONS) <= conditions
+    scaling = {
+        f"{energy}_{law}"
+        for energy in ("Eon", "Eoff", "Err")
+        for law in ("current_exponent", "voltage_exponent", "per_K")
+    }
+    assert set(USUAL_CONDITIONS) <= conditions | scaling
 
 
 @pytest.mark.parametrize(
