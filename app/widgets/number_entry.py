@@ -90,6 +90,8 @@ class NumberEntry(QLineEdit):
     def set_value(self, value: float | None, assumed: bool = False) -> None:
         """Show a value of the document. Emits no `entered`; leaves alone what is being typed."""
         same = value == self._value
+        if same and assumed == self._assumed and not (self._typed or self._refusal):
+            return
         self._value = value
         self._set_assumed(assumed)
         if not self._emitting and not (self._typed and same):
@@ -163,9 +165,10 @@ class NumberEntry(QLineEdit):
         room = self.width() - ROOM_AROUND
         if self.hasFocus():
             return plain_number(number)
-        texts = [plain_number(number, figures) for figures in range(DIGITS, 1, -1)]
-        fits = (text for text in texts if self.fontMetrics().horizontalAdvance(text) <= room)
-        return next(fits, texts[-1])
+        metrics = self.fontMetrics()
+        texts = (plain_number(number, figures) for figures in range(DIGITS, 1, -1))
+        fits = (text for text in texts if metrics.horizontalAdvance(text) <= room)
+        return next(fits, None) or plain_number(number, 2)
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         super().resizeEvent(event)

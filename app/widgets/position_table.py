@@ -101,6 +101,8 @@ def _row(name: str, average_A: float, rms_A: float, peak_A: float, blocks_V: flo
 
 def _in(value: float) -> str:
     """Three figures in the unit of the column; no figure before the point is lost."""
+    if value == 0.0:
+        return "0"
     places = max(0, 3 - len(f"{abs(value):.0f}"))
     return f"{value:.{places}f}"
 

@@ -1,8 +1,7 @@
 """The strips: every waveform of one period over one angle axis, read by a cursor.
 
-Painted by QPainter alone. All curves of a picture, thinned to what a pixel can show, cost 3 to
-5 ms at full line width, where plots of pyqtgraph with as many curves cost 8 ms at a width of
-1 px and 37 ms at 1.5 px; without its import the window also opens 0.2 s sooner.
+Painted by QPainter alone. Measured in one run: all strips with headings, names and values take
+12.9 ms at full line width; the bare curves in six plots of pyqtgraph with fixed ranges 21.7 ms.
 """
 
 from __future__ import annotations
