@@ -42,6 +42,12 @@ class LoadSection(EntrySection):
         self.add_number(LOAD_FACTOR)
         self.add_choice(DIODES)
         self._split = False
+        document.opened.connect(self._on_opened)
+
+    def _on_opened(self) -> None:
+        """Another document begins with branches alike, unless it holds three values."""
+        self._split = False
+        self.refresh()
 
     def refresh(self) -> None:
         super().refresh()

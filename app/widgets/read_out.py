@@ -72,9 +72,8 @@ class ReadOut(QWidget):
             self._paint_cell(painter, room.adjusted(4.0 if narrow else 12.0, 0, 0, 0), curve, text)
 
     def _row_name(self, strip: Strip, narrow: bool) -> str:
-        """'Line V', 'T1 A A V'; on a narrow column the units alone."""
-        units = [figures.unit for _, figures in self._figures(strip)]
-        shown = units[0] if len(set(units)) == 1 else " ".join(units)
+        """'Line V', 'T1 A, V'; on a narrow column the units alone."""
+        shown = ", ".join(dict.fromkeys(figures.unit for _, figures in self._figures(strip)))
         return shown if narrow else f"{_short_name(strip)} {shown}"
 
     def _figures(self, strip: Strip) -> Iterator[tuple[Curve, Figures]]:
