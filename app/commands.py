@@ -74,7 +74,13 @@ def _window(words: Sequence[str]) -> int:
         "Commands without a window: 'assess FILE' and 'demo PATH'; each has its own --help. "
         "A file named like a command is opened as './demo'."
     )
-    parser.add_argument("file", nargs="?", type=Path, metavar="FILE", help="a selection file")
+    parser.add_argument(
+        "file",
+        nargs="?",
+        type=Path,
+        metavar="FILE",
+        help="a selection file, or a report that carries one",
+    )
     file = parser.parse_args(words).file
     from app.bootstrap import name_missing_libraries
     from app.display import display_problem
@@ -119,7 +125,9 @@ def _assess(words: Sequence[str]) -> int:
         "0; 1 when the candidate asked for (else the chosen one, else any) is undersized; "
         "2 for bad input.",
     )
-    parser.add_argument("file", type=Path, metavar="FILE", help="a selection file")
+    parser.add_argument(
+        "file", type=Path, metavar="FILE", help="a selection file, or a report that carries one"
+    )
     parser.add_argument("--json", action="store_true", help="print the results as JSON only")
     parser.add_argument("--pdf", type=Path, metavar="PATH", help="write the report")
     parser.add_argument("--csv", type=Path, metavar="FOLDER", help="write the tables")

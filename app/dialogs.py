@@ -19,6 +19,7 @@ from PySide6.QtWidgets import (
 
 PROGRAM = "Switchwright"
 SELECTIONS = "Switchwright files (*.json)"
+REPORTS = "Reports that carry one (*.pdf)"
 
 Unsaved = Literal["save", "discard", "cancel"]
 Restore = Literal["restore", "discard", "later"]
@@ -31,7 +32,8 @@ class Dialogs:
         self._parent = parent
 
     def file_to_open(self) -> Path | None:
-        name, _ = QFileDialog.getOpenFileName(self._parent, "Open", "", f"{SELECTIONS};;All (*)")
+        kinds = f"{SELECTIONS};;{REPORTS};;All (*)"
+        name, _ = QFileDialog.getOpenFileName(self._parent, "Open", "", kinds)
         return Path(name) if name else None
 
     def file_to_save(self, suggested: Path, kinds: str = SELECTIONS) -> Path | None:

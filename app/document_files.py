@@ -57,10 +57,8 @@ class DocumentFiles(QObject):
             return False
         if not self.may_leave():
             return False
-        self._document.open(opened.selection, path.absolute())
+        self._document.open(opened.selection, opened.path and opened.path.absolute())
         self._remember(path.absolute())
-        if opened.notes:
-            self._dialogs.tell(f"{path.name} is open.", "\n".join(opened.notes))
         return True
 
     def save(self) -> bool:

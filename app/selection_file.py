@@ -17,6 +17,7 @@ import msgspec
 
 from app.entry_limits import document_type, received
 from app.record_faults import faults_in
+from app.report_file import attached_selection, is_report
 from engine.errors import Fault, InvalidSelection
 from engine.selection import FORMAT, VERSION, Selection, document_faults
 
@@ -27,15 +28,15 @@ _DEMO = Path(__file__).parent.parent / "resources" / "demo.json"
 
 @dataclass(frozen=True, slots=True)
 class Opened:
-    """A document that was read, and what should be said about it."""
+    """A document that was read."""
 
     selection: Selection
-    path: Path
-    notes: tuple[str, ...] = ()
+    path: Path | None
+    """Where it may be saved; `None` for a selection out of a report, which is never saved into."""
 
 
 def read_selection(path: str | Path) -> Opened:
-    """Read a selection file.
+    """Read a selection file, or the selection that a report carries.
 
     Raises
     ------
@@ -48,9 +49,12 @@ def read_selection(path: str | Path) -> Opened:
             data = file.read(_MOST_BYTES + 1)
     except OSError as error:
         raise _unusable(f"cannot be read: {error.strerror or error}") from None
-    if data.startswith(b"%PDF"):
-        raise _unusable("is a PDF; open the selection file itself")
-    return Opened(selection_from_bytes(data), path)
+    if not is_report(data):
+        return Opened(selection_from_bytes(data), path)
+    attached = attached_selection(data)
+    if attached is None:
+        raise _unusable("no selection in this PDF; ask for the original file")
+    return Opened(selection_from_bytes(attached), None)
 
 
 def selection_from_bytes(data: bytes) -> Selection:

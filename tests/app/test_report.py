@@ -24,9 +24,10 @@ from app.report.content import sections_of
 from app.report.options import PageSize, ReportOptions
 from app.report.pdf import report_pdf
 from app.report.wording import amount, at_corner, percent
-from app.selection_file import demo_selection, selection_from_bytes
+from app.selection_file import demo_selection, read_selection, selection_from_bytes
 from app.theme import LIGHT
 from engine.assessment import assess
+from engine.errors import InvalidSelection
 from engine.selection import Selection, with_entry
 
 
@@ -193,6 +194,21 @@ def test_many_candidates_break_over_pages_with_heads_repeated(qapp: object) -> N
 def test_marked_letters_in_entries_are_printed_as_they_are(qapp: object) -> None:
     selection = with_entry(demo_selection(), "title", "R < 3 & <b>L</b>")
     assert squeezed("R < 3 & <b>L</b>") in text_of(pdf_of(selection))
+
+
+def test_a_report_opens_as_the_selection_it_carries(tmp_path, qapp: object) -> None:
+    path = tmp_path / "report.pdf"
+    path.write_bytes(report_pdf(demo_selection(), assess(demo_selection())))
+    opened = read_selection(path)
+    assert opened.selection == demo_selection()
+    assert opened.path is None
+
+
+def test_a_pdf_without_a_selection_says_so(tmp_path) -> None:
+    path = tmp_path / "other.pdf"
+    path.write_bytes(b"%PDF-1.4\n1 0 obj\n<<>>\nstream\nnothing\nendstream\nendobj\n%%EOF")
+    with pytest.raises(InvalidSelection, match="no selection in this PDF; ask for the original"):
+        read_selection(path)
 
 
 # The page of the window ---------------------------------------------------------------------
