@@ -179,6 +179,7 @@ ROWS: tuple[Row, ...] = (
         refines=("driver_skew_s",),
     ),
     Row("switch.tsc", "t_psc", "s", waits_for("the calculation of a shoot-through")),
+    Row("switch.V_isol", "V_isol", "V", steady_link, keys=("V_isol_V",)),
     Row(
         "switch.Tvj",
         "T_vj",

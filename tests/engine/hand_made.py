@@ -114,6 +114,7 @@ THYRISTOR = Thyristor(
     V_isol_V=2500.0,
 )
 IGBT = Igbt(
+    V_isol_V=2500.0,
     V_CES_V=1200.0,
     I_C_A=75.0,
     I_C_case_C=80.0,
