@@ -35,7 +35,7 @@ from app.looked_at import LookedAt
 from app.looked_at_bar import LookedAtBar
 from app.menus import Menus
 from app.open_selection import OpenSelection
-from app.pages.page import Page
+from app.pages.page import Page, PageType
 from app.panes import UndoKeysForDocument, focus_into, focus_next_pane
 from app.picture import picture_of
 from app.rail import Rail
@@ -52,6 +52,8 @@ MINIMUM = (1024, 640)
 USUAL = (1440, 830)
 MENU_HEIGHT = 26
 HEAD_HEIGHT = 36
+OTHER_PAGES_AFTER_MS = 500
+"""The page in view is painted and filled before the others are made."""
 NOTICE_MS = 4000
 
 Layout = TypeVar("Layout", QVBoxLayout, QHBoxLayout)
@@ -65,7 +67,7 @@ class MainWindow(QMainWindow):
 
     def __init__(
         self,
-        page_types: Sequence[type[Page]],
+        page_types: Sequence[PageType],
         settings: Settings,
         dialogs: Dialogs | None = None,
         compute: Compute = picture_of,
@@ -281,7 +283,7 @@ class MainWindow(QMainWindow):
         super().showEvent(event)
         if not event.spontaneous():
             focus_into(self.current_page)
-        QTimer.singleShot(0, self, self._make_next_page)
+        QTimer.singleShot(OTHER_PAGES_AFTER_MS, self, self._make_next_page)
 
     def dragEnterEvent(self, event: QDragEnterEvent) -> None:
         if _dropped_file(event) is not None:

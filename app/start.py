@@ -7,6 +7,8 @@ import socket
 import sys
 from collections.abc import Callable, Iterator
 from contextlib import contextmanager
+from dataclasses import dataclass
+from importlib import import_module
 from pathlib import Path
 
 from PySide6.QtCore import QSocketNotifier, QTimer
@@ -15,6 +17,7 @@ from PySide6.QtWidgets import QApplication
 from app.crash_log import CrashLog
 from app.display import display_problem
 from app.main_window import MainWindow
+from app.open_selection import OpenSelection
 from app.pages.page import Page
 from app.recovery import LeftBehind, Recovery, differing_keys, left_behind
 from app.selection_file import demo_selection, read_selection
@@ -51,21 +54,34 @@ def run_window(path: Path | None = None) -> int:
     return status
 
 
-def page_types() -> tuple[type[Page], ...]:
-    """The pages, in the order of the rail."""
-    from app.pages.candidates import Candidates
-    from app.pages.duty import DutyPage
-    from app.pages.report import ReportPage
-    from app.pages.turn_off import TurnOff
+@dataclass(frozen=True)
+class LaterPage:
+    """A page whose code is loaded when it is first made, so that the window opens sooner."""
 
-    return DutyPage, Candidates, TurnOff, ReportPage
+    title: str
+    module: str
+    name: str
+
+    def __call__(self, document: OpenSelection) -> Page:
+        made = getattr(import_module(self.module), self.name)(document)
+        assert isinstance(made, Page)
+        return made
+
+
+PAGES = (
+    LaterPage("Duty", "app.pages.duty", "DutyPage"),
+    LaterPage("Candidates", "app.pages.candidates", "Candidates"),
+    LaterPage("Turn-off", "app.pages.turn_off", "TurnOff"),
+    LaterPage("Report", "app.pages.report", "ReportPage"),
+)
+"""The pages, in the order of the rail."""
 
 
 def make_window(
     settings: Settings, crash_log: CrashLog, recovery_folder: Path
 ) -> tuple[MainWindow, Recovery]:
     """The window with everything that guards its work."""
-    window = MainWindow(page_types(), settings, log_text=crash_log.text)
+    window = MainWindow(PAGES, settings, log_text=crash_log.text)
     recovery = Recovery(window.document, recovery_folder, window)
     recovery.failed.connect(window.dialogs.tell)
     window.closing.connect(recovery.close)

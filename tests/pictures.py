@@ -28,7 +28,7 @@ def _take(folder) -> None:
     from app.main_window import MainWindow
     from app.selection_file import demo_selection
     from app.settings import Settings
-    from app.start import page_types
+    from app.start import PAGES
     from app.theme import apply_theme
     from engine.version import VERSION
 
@@ -36,7 +36,7 @@ def _take(folder) -> None:
     apply_theme(application, "light")
     settings = Settings()
     settings.cautions_understood = VERSION
-    window = MainWindow(page_types(), settings)
+    window = MainWindow(PAGES, settings)
     window.document.open(demo_selection(), None)
     window.resize(*SIZE)
     window.show()

@@ -2,12 +2,23 @@
 
 from __future__ import annotations
 
+from typing import Protocol
+
 from PySide6.QtCore import Signal
 from PySide6.QtGui import QGuiApplication
 from PySide6.QtWidgets import QWidget
 
 from app.open_selection import OpenSelection
 from app.picture import Picture, Problem
+
+
+class PageType(Protocol):
+    """What makes a page; the class of a page is one."""
+
+    @property
+    def title(self) -> str: ...
+
+    def __call__(self, document: OpenSelection) -> Page: ...
 
 
 class Page(QWidget):

@@ -47,7 +47,7 @@ def made(*words):
     return window, recovery
 
 start.make_window = made
-start.page_types = lambda: (Plain,)
+start.PAGES = (Plain,)
 sys.exit(start.run_window())
 """
 

@@ -14,7 +14,7 @@ from app.main_window import MainWindow
 from app.picture import Picture
 from app.selection_file import demo_selection, read_selection
 from app.settings import Settings
-from app.start import page_types
+from app.start import PAGES
 from app.widgets.number_entry import NumberEntry
 from tests.app.answers import Answers
 
@@ -29,7 +29,7 @@ def answers() -> Answers:
 
 @pytest.fixture
 def window(qtbot: QtBot, answers: Answers) -> Iterator[MainWindow]:
-    window = MainWindow(page_types(), Settings(), answers)
+    window = MainWindow(PAGES, Settings(), answers)
     window.resize(1440, 830)
     window.show()
     window.activateWindow()
